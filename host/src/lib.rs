@@ -1,0 +1,2 @@
+//! Prove that a microcontroller's integers are good enough for a chain of two-ports.
+pub mod plan;

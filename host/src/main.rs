@@ -1,0 +1,2 @@
+//! The `stagebits` command.
+fn main() {}

@@ -1,0 +1,3 @@
+//! Chains of two-ports in block fixed point.
+#![no_std]
+#![forbid(unsafe_code)]
