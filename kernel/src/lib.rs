@@ -1,3 +1,62 @@
 //! Chains of two-ports in block fixed point.
-#![no_std]
+//!
+//! A chain of coils, capacitors, lines, stubs and transformers is walked from its load to its
+//! source in integers of a chosen word length, in a bounded number of instructions and without a
+//! heap, a panic or a floating-point unit. The same source gives the same bits on every core and
+//! on the desktop. The formats, the rounding and the headroom are in the crate's `README.md`.
+//!
+//! ```
+//! use stagebits_kernel::{Chain, Frequency, Gamma, Scalar, State};
+//! use stagebits_kernel::{Branch, Complex, Law, Position, Stage};
+//!
+//! // A series coil of 1 µH on 50 ohms: z = j f · 2π·1e-6/50, and 2π·1e-6/50 = m · 2^-53
+//! let rising = Complex {
+//!     re: Scalar::ZERO,
+//!     im: Scalar::from_parts(1_131_878_040, -53).unwrap(),
+//! };
+//! let coil = Branch {
+//!     position: Position::Series,
+//!     inverted: false,
+//!     law: Law { rising, ..Law::ZERO },
+//!     beside: None,
+//! };
+//! let chain = Chain::<Scalar, 1>::new(&[Stage::Branch(coil)]).unwrap();
+//!
+//! let point = chain.at::<i32>(&Frequency::new(7_000_000));
+//! let input = point.walk(State::from_load(Gamma::MATCHED));
+//! let (resistance, reactance) = input.moments().milliohms(50_000);
+//! assert_eq!((resistance, reactance), (50_000, 43_982)); // 2π · 7 MHz · 1 µH = 43.982 ohm
+//! ```
+#![cfg_attr(not(test), no_std)]
 #![forbid(unsafe_code)]
+
+mod angle;
+mod chain;
+#[cfg(feature = "float")]
+mod float;
+mod frequency;
+mod hyperbolic;
+mod immittance;
+mod product;
+mod readout;
+mod real;
+mod scalar;
+mod stage;
+mod state;
+mod walk;
+mod word;
+
+pub use chain::{Chain, Resolved, TooManyStages};
+#[cfg(feature = "float")]
+pub use float::FloatState;
+pub use frequency::Frequency;
+pub use immittance::Immittance;
+pub use readout::{Gamma, Moments, Swr};
+pub use real::{Complex, Real};
+pub use scalar::Scalar;
+pub use stage::{
+    Branch, Law, Line, LossyReactor, Position, Stage, Step, Stub, StubFunction, Transformer,
+};
+pub use state::State;
+pub use walk::Walk;
+pub use word::{Bits, DoubleWord, Word, round_shift};

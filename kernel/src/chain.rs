@@ -1,0 +1,93 @@
+//! Chains of stages, and the same at one frequency.
+
+use heapless::Vec;
+
+use crate::frequency::Frequency;
+use crate::real::Complex;
+use crate::scalar::Scalar;
+use crate::stage::{Stage, Step};
+use crate::walk::Walk;
+
+/// Up to `N` stages, the first at the source and the last at the load.
+#[derive(Clone, PartialEq, Debug)]
+pub struct Chain<R, const N: usize> {
+    stages: Vec<Stage<R>, N>,
+}
+
+/// A chain with more stages than its capacity.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct TooManyStages;
+
+impl<R: Copy, const N: usize> Chain<R, N> {
+    /// A chain of these stages, from the source to the load.
+    ///
+    /// # Errors
+    /// [`TooManyStages`] if there are more than `N`.
+    pub fn new(stages: &[Stage<R>]) -> Result<Self, TooManyStages> {
+        let stages = Vec::from_slice(stages).map_err(|_| TooManyStages)?;
+        Ok(Self { stages })
+    }
+
+    /// The stages, from the source to the load.
+    pub fn stages(&self) -> &[Stage<R>] {
+        &self.stages
+    }
+}
+
+impl<const N: usize> Chain<Scalar, N> {
+    /// The chain at one frequency, its immittances rounded to words.
+    #[inline]
+    pub fn at<W: crate::Word>(
+        &self,
+        frequency: &Frequency<Scalar>,
+    ) -> Resolved<crate::Immittance<W>, N> {
+        self.resolve(frequency, crate::Immittance::from_scalars)
+    }
+}
+
+impl<R: crate::Real, const N: usize> Chain<R, N> {
+    #[inline]
+    pub(crate) fn resolve<Z>(
+        &self,
+        frequency: &Frequency<R>,
+        convert: impl Fn(Complex<R>) -> Z,
+    ) -> Resolved<Z, N> {
+        let mut steps = Vec::new();
+        for stage in &self.stages {
+            // both have capacity N, so that no stage is left out
+            let _ = steps.push(stage.at(frequency).map(&convert));
+        }
+        Resolved { steps }
+    }
+}
+
+/// A chain at one frequency.
+#[derive(Clone, PartialEq, Debug)]
+pub struct Resolved<Z, const N: usize> {
+    steps: Vec<Step<Z>, N>,
+}
+
+impl<Z, const N: usize> Resolved<Z, N> {
+    /// The steps, from the source to the load.
+    pub fn steps(&self) -> &[Step<Z>] {
+        &self.steps
+    }
+
+    /// Takes a state at the load to the source.
+    #[inline]
+    pub fn walk<S: Walk<Z>>(&self, mut state: S) -> S {
+        for step in self.steps.iter().rev() {
+            state.pass(step);
+        }
+        state
+    }
+
+    /// Takes a state at the source to the load: the inverse steps in the opposite order.
+    #[inline]
+    pub fn walk_back<S: Walk<Z>>(&self, mut state: S) -> S {
+        for step in &self.steps {
+            state.pass_back(step);
+        }
+        state
+    }
+}

@@ -1,0 +1,170 @@
+//! The same stages and the same walk over `f32` and `f64`.
+//!
+//! For cores with a floating-point unit, and to compare like with like. Mathematical functions
+//! come from `libm`, so that these, too, give the same bits on every core.
+
+use crate::chain::{Chain, Resolved};
+use crate::frequency::Frequency;
+use crate::real::{Complex, Real};
+use crate::walk::Walk;
+
+macro_rules! real {
+    ($float:ty, $sqrt:path, $sin:path, $cos:path, $sinh:path, $cosh:path, $scalbn:path, $pi_4:expr) => {
+        impl Real for $float {
+            const ZERO: Self = 0.0;
+            const ONE: Self = 1.0;
+            #[inline]
+            fn from_hertz(hertz: u32) -> Self {
+                hertz as $float
+            }
+            #[inline(always)]
+            fn times(self, other: Self) -> Self {
+                self * other
+            }
+            #[inline(always)]
+            fn plus(self, other: Self) -> Self {
+                self + other
+            }
+            #[inline(always)]
+            fn negated(self) -> Self {
+                -self
+            }
+            #[inline]
+            fn times_power_of_two(self, power: i32) -> Self {
+                if power == 1 {
+                    self + self
+                } else {
+                    $scalbn(self, power)
+                }
+            }
+            #[inline]
+            fn reciprocal(self) -> Self {
+                1.0 / self
+            }
+            #[inline]
+            fn square_root(self) -> Self {
+                if self > 0.0 { $sqrt(self) } else { 0.0 }
+            }
+            #[inline]
+            fn sine_cosine(half_angle: i32) -> (Self, Self) {
+                let angle = half_angle as $float * ($pi_4 / 2_147_483_648.0);
+                ($sin(angle), $cos(angle))
+            }
+            #[inline]
+            fn hyperbolic(self) -> (Self, Self) {
+                ($sinh(self), $cosh(self))
+            }
+            #[inline(always)]
+            fn is_zero(self) -> bool {
+                self == 0.0
+            }
+        }
+    };
+}
+
+real!(
+    f32,
+    libm::sqrtf,
+    libm::sinf,
+    libm::cosf,
+    libm::sinhf,
+    libm::coshf,
+    libm::scalbnf,
+    core::f32::consts::FRAC_PI_4
+);
+real!(
+    f64,
+    libm::sqrt,
+    libm::sin,
+    libm::cos,
+    libm::sinh,
+    libm::cosh,
+    libm::scalbn,
+    core::f64::consts::FRAC_PI_4
+);
+
+/// Voltage v and current R0·i in floating point.
+#[derive(Clone, Copy, PartialEq, Debug)]
+pub struct FloatState<R> {
+    /// Voltage.
+    pub v: Complex<R>,
+    /// Current times R0.
+    pub i: Complex<R>,
+}
+
+impl<R: Real> FloatState<R> {
+    /// The state v = 1 + Γ, i = 1 − Γ at a load with this reflection coefficient.
+    #[inline]
+    pub fn from_load(load: Complex<R>) -> Self {
+        Self {
+            v: Complex {
+                re: R::ONE.plus(load.re),
+                im: load.im,
+            },
+            i: Complex {
+                re: R::ONE.minus(load.re),
+                im: load.im.negated(),
+            },
+        }
+    }
+
+    /// Γ = (v − i) / (v + i) referred to R0.
+    #[inline]
+    pub fn gamma(&self) -> Complex<R> {
+        let (v, i) = (self.v, self.i);
+        let difference = Complex {
+            re: v.re.minus(i.re),
+            im: v.im.minus(i.im),
+        };
+        times(difference, v.plus(i).reciprocal())
+    }
+}
+
+/// Complex product; parts of the first factor that are zero cost nothing.
+#[inline(always)]
+fn times<R: Real>(z: Complex<R>, w: Complex<R>) -> Complex<R> {
+    if z.re.is_zero() {
+        return Complex {
+            re: z.im.times(w.im).negated(),
+            im: z.im.times(w.re),
+        };
+    }
+    if z.im.is_zero() {
+        return w.scaled(z.re);
+    }
+    Complex {
+        re: z.re.times(w.re).minus(z.im.times(w.im)),
+        im: z.re.times(w.im).plus(z.im.times(w.re)),
+    }
+}
+
+impl<R: Real> Walk<Complex<R>> for FloatState<R> {
+    #[inline]
+    fn series(&mut self, z: &Complex<R>) {
+        self.v = self.v.plus(times(*z, self.i));
+    }
+    #[inline]
+    fn shunt(&mut self, y: &Complex<R>) {
+        self.i = self.i.plus(times(*y, self.v));
+    }
+    #[inline]
+    fn stretch(&mut self, ratio: &Complex<R>, inverse: &Complex<R>) {
+        self.v = self.v.scaled(ratio.re);
+        self.i = self.i.scaled(inverse.re);
+    }
+    #[inline]
+    fn negated(z: &Complex<R>) -> Complex<R> {
+        Complex {
+            re: z.re.negated(),
+            im: z.im.negated(),
+        }
+    }
+}
+
+impl<R: Real, const N: usize> Chain<R, N> {
+    /// The chain at one frequency in floating point.
+    #[inline]
+    pub fn at_float(&self, frequency: &Frequency<R>) -> Resolved<Complex<R>, N> {
+        self.resolve(frequency, |z| z)
+    }
+}

@@ -1,0 +1,103 @@
+//! What a number must offer so that the stages can be resolved with it.
+
+use core::fmt::Debug;
+
+/// The numbers in which a stage turns its constants and the frequency into immittances.
+///
+/// [`crate::Scalar`] is the fixed-point one. With the feature `float`, `f32` and `f64` are here,
+/// too, so that a core with a floating-point unit runs the very same stages.
+pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
+    /// Zero.
+    const ZERO: Self;
+    /// One.
+    const ONE: Self;
+    /// A whole number of hertz.
+    fn from_hertz(hertz: u32) -> Self;
+    /// Product.
+    fn times(self, other: Self) -> Self;
+    /// Sum.
+    fn plus(self, other: Self) -> Self;
+    /// The number with the other sign.
+    fn negated(self) -> Self;
+    /// The number times 2^power.
+    fn times_power_of_two(self, power: i32) -> Self;
+    /// 1/x; of zero a very large positive number or infinity.
+    fn reciprocal(self) -> Self;
+    /// √x; zero where x < 0.
+    fn square_root(self) -> Self;
+    /// Sine and cosine of half_angle · π/4 / 2^31, an angle within ±π/4.
+    fn sine_cosine(half_angle: i32) -> (Self, Self);
+    /// Hyperbolic sine and cosine of x ≥ 0.
+    fn hyperbolic(self) -> (Self, Self);
+    /// Whether the number is zero.
+    fn is_zero(self) -> bool;
+    /// Difference.
+    #[inline(always)]
+    fn minus(self, other: Self) -> Self {
+        self.plus(other.negated())
+    }
+}
+
+/// A complex number.
+#[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+pub struct Complex<R> {
+    /// Real part.
+    pub re: R,
+    /// Imaginary part.
+    pub im: R,
+}
+
+impl<R: Real> Complex<R> {
+    /// Zero.
+    pub const ZERO: Self = Self {
+        re: R::ZERO,
+        im: R::ZERO,
+    };
+
+    /// Sum.
+    #[inline]
+    pub(crate) fn plus(self, other: Self) -> Self {
+        Self {
+            re: self.re.plus(other.re),
+            im: self.im.plus(other.im),
+        }
+    }
+
+    /// Product with a real number.
+    #[inline]
+    pub(crate) fn scaled(self, factor: R) -> Self {
+        Self {
+            re: self.re.times(factor),
+            im: self.im.times(factor),
+        }
+    }
+
+    /// 1/z; of zero a very large positive real number.
+    ///
+    /// A purely real or imaginary z takes one reciprocal and keeps its phase exactly.
+    #[inline]
+    pub(crate) fn reciprocal(self) -> Self {
+        if self.im.is_zero() {
+            return Self {
+                re: self.re.reciprocal(),
+                im: R::ZERO,
+            };
+        }
+        if self.re.is_zero() {
+            return Self {
+                re: R::ZERO,
+                im: self.im.reciprocal().negated(),
+            };
+        }
+        let norm = self
+            .re
+            .times(self.re)
+            .plus(self.im.times(self.im))
+            .reciprocal();
+        Self {
+            re: self.re,
+            im: self.im.negated(),
+        }
+        .scaled(norm)
+    }
+}

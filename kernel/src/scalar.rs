@@ -1,0 +1,435 @@
+//! Scalars: numbers with a 32-bit mantissa and an exponent of their own.
+//!
+//! A point's frequency words, the constants of a chain and everything between them and the
+//! immittances are scalars. Each operation rounds once, to the nearest with ties up.
+
+use crate::product;
+use crate::real::Real;
+use crate::word::round_shift;
+
+/// The number mantissa · 2^exponent; 2^30 ≤ |mantissa| < 2^31, or both zero.
+#[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+pub struct Scalar {
+    mantissa: i32,
+    exponent: i32,
+}
+
+/// Significant bits of a scalar, the sign not counted.
+const SIGNIFICANT: u32 = 31;
+
+impl Scalar {
+    /// Zero.
+    pub const ZERO: Self = Self {
+        mantissa: 0,
+        exponent: 0,
+    };
+    /// One.
+    pub const ONE: Self = Self {
+        mantissa: 1 << 30,
+        exponent: -30,
+    };
+    /// Stands in for the reciprocal of zero: about 2^1000, beyond every immittance that a word
+    /// length can tell from an open or short circuit.
+    pub const HUGE: Self = Self {
+        mantissa: i32::MAX,
+        exponent: 970,
+    };
+    /// Largest magnitude of an exponent that [`Scalar::from_parts`] accepts.
+    pub const EXPONENT_MAX: i32 = 500;
+
+    /// The number mantissa · 2^exponent, or `None` if it is not normalised or the exponent is
+    /// beyond ±[`Scalar::EXPONENT_MAX`].
+    pub const fn from_parts(mantissa: i32, exponent: i32) -> Option<Self> {
+        let magnitude = mantissa.unsigned_abs();
+        let normal = magnitude >= 1 << 30 && magnitude < 1 << 31;
+        let range = exponent >= -Self::EXPONENT_MAX && exponent <= Self::EXPONENT_MAX;
+        if (normal && range) || (mantissa == 0 && exponent == 0) {
+            Some(Self { mantissa, exponent })
+        } else {
+            None
+        }
+    }
+
+    /// Mantissa: 0, or at least 2^30 and less than 2^31 in magnitude.
+    pub const fn mantissa(self) -> i32 {
+        self.mantissa
+    }
+
+    /// Exponent of two that the mantissa is multiplied by.
+    pub const fn exponent(self) -> i32 {
+        self.exponent
+    }
+
+    /// Whether this is zero.
+    #[inline(always)]
+    pub const fn is_zero(self) -> bool {
+        self.mantissa == 0
+    }
+
+    /// value · 2^exponent, rounded to a scalar. |value| ≤ 2^63 − 1.
+    #[inline]
+    pub fn from_i64(value: i64, exponent: i32) -> Self {
+        let bits = 64 - value.unsigned_abs().leading_zeros();
+        if bits == 0 {
+            return Self::ZERO;
+        }
+        if bits <= SIGNIFICANT {
+            let left = SIGNIFICANT - bits;
+            return Self {
+                mantissa: (value << left) as i32,
+                exponent: exponent - left as i32,
+            };
+        }
+        let right = bits - SIGNIFICANT;
+        Self::carry(round_shift(value, right), exponent + right as i32)
+    }
+
+    /// From a mantissa with 2^30 ≤ |mantissa| ≤ 2^31, where rounding may have carried into bit 31.
+    #[inline(always)]
+    fn carry(mantissa: i64, exponent: i32) -> Self {
+        if mantissa.unsigned_abs() >> SIGNIFICANT != 0 {
+            Self {
+                mantissa: (mantissa >> 1) as i32,
+                exponent: exponent + 1,
+            }
+        } else {
+            Self {
+                mantissa: mantissa as i32,
+                exponent,
+            }
+        }
+    }
+
+    /// value · 2^exponent of a 32-bit integer, exact but for magnitudes of 2^31 and above.
+    #[inline]
+    pub fn from_i32(value: i32, exponent: i32) -> Self {
+        Self::from_i64(value as i64, exponent)
+    }
+
+    /// The number times 2^power.
+    #[inline(always)]
+    pub const fn scaled(self, power: i32) -> Self {
+        if self.is_zero() {
+            self
+        } else {
+            Self {
+                mantissa: self.mantissa,
+                exponent: self.exponent + power,
+            }
+        }
+    }
+
+    /// The number in fixed point with `fraction_bits`, rounded half up; saturates at the ends of
+    /// `i32`.
+    #[inline]
+    pub fn to_fixed(self, fraction_bits: i32) -> i32 {
+        let left = self.exponent + fraction_bits;
+        if left <= 0 {
+            round_shift(self.mantissa as i64, left.unsigned_abs()) as i32
+        } else if self.is_zero() {
+            0
+        } else if self.mantissa < 0 {
+            i32::MIN
+        } else {
+            i32::MAX
+        }
+    }
+
+    /// Whether this is below zero.
+    #[inline(always)]
+    pub const fn is_negative(self) -> bool {
+        self.mantissa < 0
+    }
+}
+
+impl Real for Scalar {
+    const ZERO: Self = Self::ZERO;
+    const ONE: Self = Self::ONE;
+
+    #[inline]
+    fn from_hertz(hertz: u32) -> Self {
+        Self::from_i64(hertz as i64, 0)
+    }
+
+    #[inline]
+    fn times(self, other: Self) -> Self {
+        // 2^60 ≤ |product| < 2^62 unless a factor is zero
+        let product = product::signed(self.mantissa, other.mantissa);
+        if product == 0 {
+            return Self::ZERO;
+        }
+        let right = if product.unsigned_abs() >> 61 == 0 {
+            30
+        } else {
+            31
+        };
+        Self::carry(
+            round_shift(product, right),
+            self.exponent + other.exponent + right as i32,
+        )
+    }
+
+    #[inline]
+    fn plus(self, other: Self) -> Self {
+        if self.is_zero() {
+            return other;
+        }
+        if other.is_zero() {
+            return self;
+        }
+        let (large, small) = if self.exponent >= other.exponent {
+            (self, other)
+        } else {
+            (other, self)
+        };
+        let distance = (large.exponent - small.exponent).unsigned_abs();
+        // 31 guard bits: exact for distances up to 31; beyond that what is lost is below 2^-31 of
+        // the larger mantissa's last place
+        let guard = SIGNIFICANT;
+        let sum = ((large.mantissa as i64) << guard)
+            + (((small.mantissa as i64) << guard) >> distance.min(63));
+        Self::from_i64(sum, large.exponent - guard as i32)
+    }
+
+    #[inline(always)]
+    fn negated(self) -> Self {
+        Self {
+            mantissa: -self.mantissa,
+            exponent: self.exponent,
+        }
+    }
+
+    #[inline(always)]
+    fn times_power_of_two(self, power: i32) -> Self {
+        self.scaled(power)
+    }
+
+    #[inline]
+    fn reciprocal(self) -> Self {
+        if self.is_zero() {
+            return Self::HUGE;
+        }
+        let magnitude = self.mantissa.unsigned_abs();
+        // 1 / (m · 2^e) = (2^61 / m) · 2^(−61−e)
+        let mantissa = if magnitude == 1 << 30 {
+            // 2^61 / 2^30 = 2^31 needs one bit more than a mantissa has
+            return Self {
+                mantissa: self.mantissa,
+                exponent: -60 - self.exponent,
+            };
+        } else {
+            reciprocal(magnitude) as i32
+        };
+        Self {
+            mantissa: if self.mantissa < 0 {
+                -mantissa
+            } else {
+                mantissa
+            },
+            exponent: -61 - self.exponent,
+        }
+    }
+
+    #[inline]
+    fn square_root(self) -> Self {
+        if self.mantissa <= 0 {
+            return Self::ZERO;
+        }
+        // m · 2^e = (m · 2^(30 or 31)) · 2^(even), so that the root has 31 bits
+        let odd = (self.exponent & 1) as u32;
+        let root = square_root((self.mantissa as u64) << (30 + odd));
+        Self::carry(root as i64, (self.exponent - 30 - odd as i32) >> 1)
+    }
+
+    #[inline]
+    fn sine_cosine(half_angle: i32) -> (Self, Self) {
+        let (sine, cosine) = crate::angle::sine_cosine(half_angle);
+        (Self::from_i32(sine, -31), Self::carry(cosine as i64, -31))
+    }
+
+    #[inline]
+    fn hyperbolic(self) -> (Self, Self) {
+        crate::hyperbolic::sine_cosine(self)
+    }
+
+    #[inline(always)]
+    fn is_zero(self) -> bool {
+        self.mantissa == 0
+    }
+}
+
+/// Nearest integer to 2^61 / m for 2^30 < m < 2^31.
+///
+/// Newton's iteration from a table of 8-bit seeds, then one exact remainder: the result is the
+/// correctly rounded quotient (ties up), whatever the path to it.
+fn reciprocal(m: u32) -> u32 {
+    /// Seeds: 2^17 / (2^8 + i + 1/2) − 2^8, the reciprocal at the middle of each 1/256 of [1, 2).
+    const SEEDS: [u8; 256] = {
+        let mut seeds = [0; 256];
+        let mut i = 0;
+        while i < 256 {
+            // rounded 2^18 / (2^9 + 2 i + 1), in 2^-9
+            let seed = ((1 << 19) / (512 + 2 * i as u32 + 1)).div_ceil(2);
+            seeds[i] = (seed - 256) as u8;
+            i += 1;
+        }
+        seeds
+    };
+    let seed = SEEDS[(m >> 22) as usize & 0xff] as u32 + 256;
+    // x = m / 2^30 in [1, 2). First step in 32 bits: r ← r (2 − x r)
+    let error = (1 << 31) - (m >> 9) * seed;
+    let r = (seed * (error >> 9)) as i32;
+    // second step, relative to the first: r ← r + r (1 − x r), r in 2^-30 then 2^-31
+    let rest = ((1 << 60) - product::signed(m as i32, r)) >> 14;
+    let r = ((r as i64) << 1) + (product::signed(r, rest as i32) >> 45);
+    // r is within one unit of the quotient: the exact remainder settles the last place
+    let half = (m >> 1) as i64;
+    let remainder = (1 << 61) - product::unsigned(r as u32, m) as i64;
+    let m = m as i64;
+    let correction = if remainder < -half {
+        -1
+    } else if remainder >= m - half {
+        1
+    } else {
+        0
+    };
+    (r + correction) as u32
+}
+
+/// Nearest integer to √x for 2^60 ≤ x < 2^62, digit by digit.
+fn square_root(x: u64) -> u32 {
+    let mut rest = x;
+    let mut root: u64 = 0;
+    let mut digit: u64 = 1 << 60;
+    while digit != 0 {
+        if rest >= root + digit {
+            rest -= root + digit;
+            root = (root >> 1) + digit;
+        } else {
+            root >>= 1;
+        }
+        digit >>= 2;
+    }
+    // rest = x − root²; √x > root + 1/2 exactly if rest > root
+    (root + u64::from(rest > root)) as u32
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use proptest::prelude::*;
+
+    fn value(s: Scalar) -> f64 {
+        f64::from(s.mantissa) * 2.0_f64.powi(s.exponent)
+    }
+
+    fn normal() -> impl Strategy<Value = Scalar> {
+        ((1_i32 << 30)..=i32::MAX, any::<bool>(), -80..80).prop_map(|(m, negative, exponent)| {
+            Scalar {
+                mantissa: if negative { -m } else { m },
+                exponent,
+            }
+        })
+    }
+
+    fn is_normal(s: Scalar) -> bool {
+        s == Scalar::ZERO || (1 << 30..1_u32 << 31).contains(&s.mantissa.unsigned_abs())
+    }
+
+    /// Half a unit in the last place of a scalar, relative to its smallest mantissa.
+    const HALF_UNIT: f64 = 1.0 / (1_u64 << 31) as f64;
+
+    fn nearest_quotient(m: u32) -> u64 {
+        ((1_u64 << 61) + u64::from(m / 2)) / u64::from(m)
+    }
+
+    /// All seeds' edges with their neighbours, a spaced set and both ends of the range.
+    #[test]
+    fn reciprocal_is_the_nearest_integer_at_every_table_edge() {
+        let edges = (256_u32..512).flat_map(|i| {
+            let edge = i << 22;
+            (edge.saturating_sub(3)..=edge + 3).chain(std::iter::once(edge + (1 << 21)))
+        });
+        let spaced = (0..2_000_000).map(|i| (1 << 30) + i * 536 + i % 7);
+        for m in edges
+            .chain(spaced)
+            .chain(i32::MAX as u32 - 9..=i32::MAX as u32)
+        {
+            if m > 1 << 30 {
+                assert_eq!(u64::from(reciprocal(m)), nearest_quotient(m), "m = {m}");
+            }
+        }
+    }
+
+    #[test]
+    fn square_root_is_the_nearest_integer_at_squares_and_half_way() {
+        for root in [
+            1_u64 << 30,
+            (1 << 30) + 1,
+            1_518_500_249,
+            (1 << 31) - 2,
+            (1 << 31) - 1,
+        ] {
+            for (x, expected) in [
+                (root * root, root),
+                (root * root + root, root),
+                (root * root + root + 1, root + 1),
+            ] {
+                if x >> 62 == 0 {
+                    assert_eq!(u64::from(square_root(x)), expected, "√{x}");
+                }
+            }
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn reciprocal_is_the_nearest_integer(m in (1_u32 << 30) + 1..1 << 31) {
+            prop_assert_eq!(u64::from(reciprocal(m)), nearest_quotient(m));
+        }
+
+        #[test]
+        fn square_root_is_the_nearest_integer(x in 1_u64 << 60..1 << 62) {
+            let root = u64::from(square_root(x));
+            prop_assert!(root * root - root < x && x <= root * root + root);
+        }
+
+        #[test]
+        fn each_operation_rounds_once(a in normal(), b in normal()) {
+            for (result, exact) in [
+                (a.times(b), value(a) * value(b)),
+                (a.plus(b), value(a) + value(b)),
+                (a.reciprocal(), 1.0 / value(a)),
+            ] {
+                prop_assert!(is_normal(result));
+                // f64 itself rounds the exact value by 2^-53
+                let limit = exact.abs() * (HALF_UNIT + 1e-15);
+                prop_assert!((value(result) - exact).abs() <= limit, "{a:?} {b:?} {result:?}");
+            }
+            if a.mantissa > 0 {
+                let exact = value(a).sqrt();
+                let root = a.square_root();
+                prop_assert!(is_normal(root));
+                prop_assert!((value(root) - exact).abs() <= exact * (HALF_UNIT + 1e-15));
+            }
+        }
+
+        #[test]
+        fn fixed_point_is_rounded_and_saturates(a in normal(), fraction in 0..40) {
+            let exact = (value(a) * 2.0_f64.powi(fraction) + 0.5).floor();
+            let expected = exact.clamp(f64::from(i32::MIN), f64::from(i32::MAX));
+            prop_assert_eq!(f64::from(a.to_fixed(fraction)), expected);
+        }
+    }
+
+    #[test]
+    fn zero_and_its_reciprocal_stay_in_range() {
+        assert_eq!(Scalar::ZERO.reciprocal(), Scalar::HUGE);
+        assert_eq!(Scalar::ZERO.times(Scalar::HUGE), Scalar::ZERO);
+        assert_eq!(Scalar::ZERO.plus(Scalar::ONE), Scalar::ONE);
+        assert_eq!(Scalar::ONE.plus(Scalar::ONE.negated()), Scalar::ZERO);
+        assert_eq!(Scalar::from_parts(1, 0), None);
+        assert_eq!(Scalar::from_parts(i32::MIN, 0), None);
+        assert_eq!(Scalar::from_parts(1 << 30, -30), Some(Scalar::ONE));
+    }
+}

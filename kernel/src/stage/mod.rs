@@ -1,0 +1,91 @@
+//! The kinds of two-port, one file each, and what they become at one frequency.
+
+mod branch;
+mod line;
+mod stub;
+mod transformer;
+
+pub use branch::{Branch, Law, LossyReactor};
+pub use line::Line;
+pub use stub::{Stub, StubFunction};
+pub use transformer::Transformer;
+
+use crate::frequency::Frequency;
+use crate::real::{Complex, Real};
+
+/// Where a branch or a stub sits.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub enum Position {
+    /// In the through path: an impedance.
+    Series,
+    /// From the through path to ground: an admittance.
+    Shunt,
+}
+
+/// One two-port, as the constants that the image stores, normalised to R0.
+#[derive(Clone, Copy, PartialEq, Debug)]
+pub enum Stage<R> {
+    /// An immittance that is a law of frequency.
+    Branch(Branch<R>),
+    /// A length of line.
+    Line(Line<R>),
+    /// A line with an open or shorted end.
+    Stub(Stub<R>),
+    /// An ideal transformer.
+    Transformer(Transformer<R>),
+}
+
+/// A stage at one frequency: what the walk multiplies by.
+#[derive(Clone, Copy, PartialEq, Debug)]
+pub enum Step<Z> {
+    /// v ← v + z·i
+    Series(Z),
+    /// i ← i + y·v
+    Shunt(Z),
+    /// A symmetrical T: the impedance, the admittance, the impedance again.
+    Tee {
+        /// Each of the two series impedances.
+        series: Z,
+        /// The shunt admittance between them.
+        shunt: Z,
+    },
+    /// v ← n·v, i ← i/n, both factors real.
+    Stretch {
+        /// n
+        ratio: Z,
+        /// 1/n
+        inverse: Z,
+    },
+}
+
+impl<R: Real> Stage<R> {
+    /// The stage at one frequency.
+    #[inline]
+    pub fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {
+        match self {
+            Self::Branch(branch) => branch.at(frequency),
+            Self::Line(line) => line.at(frequency),
+            Self::Stub(stub) => stub.at(frequency),
+            Self::Transformer(transformer) => transformer.step(),
+        }
+    }
+}
+
+impl<Z> Step<Z> {
+    /// The same step with its immittances converted.
+    #[inline(always)]
+    pub fn map<Y>(self, mut convert: impl FnMut(Z) -> Y) -> Step<Y> {
+        match self {
+            Self::Series(z) => Step::Series(convert(z)),
+            Self::Shunt(y) => Step::Shunt(convert(y)),
+            Self::Tee { series, shunt } => Step::Tee {
+                series: convert(series),
+                shunt: convert(shunt),
+            },
+            Self::Stretch { ratio, inverse } => Step::Stretch {
+                ratio: convert(ratio),
+                inverse: convert(inverse),
+            },
+        }
+    }
+}

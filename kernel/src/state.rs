@@ -1,0 +1,306 @@
+//! States: voltage and current of a wave on the chain, as one block of four words.
+
+use crate::immittance::Immittance;
+use crate::readout::Gamma;
+use crate::word::{DoubleWord, Word, round_shift};
+
+/// Voltage v and current R0·i at one point of the chain: four words with a shared exponent.
+///
+/// Every word fits W − 1 bits: −2^(W−2) ≤ word < 2^(W−2). The exponent only grows on a walk, and it cancels in
+/// every ratio of v and i.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub struct State<W> {
+    pub(crate) v: [W; 2],
+    pub(crate) i: [W; 2],
+    pub(crate) exponent: i32,
+}
+
+impl<W: Word> State<W> {
+    /// The state v = 1 + Γ, i = 1 − Γ at a load with this reflection coefficient.
+    ///
+    /// No division: open and short circuits are loads like any other. Each word is rounded once,
+    /// to 2^(2−W) of the block or better.
+    #[inline]
+    pub fn from_load(load: Gamma) -> Self {
+        let one = 1_i64 << Gamma::FRACTION_BITS;
+        let (re, im) = (load.re as i64, load.im as i64);
+        let words = [one + re, im, one - re, -im];
+        let mut right = 33 - W::BITS;
+        let largest = words.into_iter().fold(0, |top, word| top.max(word.abs()));
+        if round_shift(largest, right) >= W::LIMIT as i64 {
+            right += 1;
+        }
+        let [v_re, v_im, i_re, i_im] =
+            words.map(|word| W::from_i32(round_shift(word, right) as i32));
+        Self {
+            v: [v_re, v_im],
+            i: [i_re, i_im],
+            exponent: right as i32 - Gamma::FRACTION_BITS as i32,
+        }
+    }
+
+    /// The words of v and i (real and imaginary part of each) and the power of two that they are
+    /// multiplied by.
+    pub fn words(&self) -> ([i32; 2], [i32; 2], i32) {
+        (self.v.map(W::to_i32), self.i.map(W::to_i32), self.exponent)
+    }
+
+    /// Passes a series immittance towards the source: v ← v + z·i.
+    #[inline]
+    pub(crate) fn series(&mut self, z: &Immittance<W>) {
+        let grown = shear(&mut self.v, &mut self.i, z);
+        self.exponent += grown as i32;
+    }
+
+    /// Passes a shunt immittance towards the source: i ← i + y·v.
+    #[inline]
+    pub(crate) fn shunt(&mut self, y: &Immittance<W>) {
+        let grown = shear(&mut self.i, &mut self.v, y);
+        self.exponent += grown as i32;
+    }
+
+    /// Multiplies v and i by two real factors, an ideal transformer's ratio and its inverse.
+    ///
+    /// The factors are the real parts of two immittances with exponents of their own.
+    #[inline]
+    pub(crate) fn stretch(&mut self, of_v: &Immittance<W>, of_i: &Immittance<W>) {
+        let v = self.v.map(|word| word.times(of_v.re));
+        let i = self.i.map(|word| word.times(of_i.re));
+        let need = |pair, exponent: i8| growth::<W>(pair, exponent as i32);
+        let grown = need(v, of_v.exponent).max(need(i, of_i.exponent)).max(0);
+        let settle = |product: W::Double, exponent: i8| {
+            let right = W::BITS as i32 - exponent as i32 + grown;
+            W::narrow(round_shift(product, right.unsigned_abs()))
+        };
+        self.v = v.map(|product| settle(product, of_v.exponent));
+        self.i = i.map(|product| settle(product, of_i.exponent));
+        self.exponent += grown;
+    }
+}
+
+/// target ← target + z · other, with both kept in one block; returns by how many powers of two
+/// the block has grown.
+///
+/// The complex product and the target are summed at full width and rounded once. Headroom: words
+/// are at most 2^(W−2), mantissas below 2^(W−1), so the product's parts stay below 2^(2W−2).
+///
+/// - Exponent k ≤ 0, |z| parts below 1/2: the product adds at most 2^(W−2), so the sum fits a
+///   word and the block grows by at most one.
+/// - k ≥ 1: the target is raised to the product's scale, 2^(W−k) per unit, where the sum stays
+///   below 1.5 · 2^(2W−2); its size tells by how much the block must grow, at most k + 1.
+#[inline(always)]
+fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) -> u32 {
+    let product = times(z, other);
+    let bits = W::BITS;
+    let exponent = z.exponent as i32;
+    if exponent <= 0 {
+        let right = bits + exponent.unsigned_abs();
+        let sum = [0, 1].map(|part| target[part].widen() + round_shift(product[part], right));
+        if fits::<W>(sum[0]) && fits::<W>(sum[1]) {
+            *target = sum.map(W::narrow);
+            return 0;
+        }
+        // one place more: rounded once from the same exact sum
+        let floor = right.min(W::Double::BITS - 1);
+        *target = [0, 1].map(|part| {
+            W::narrow(round_shift(
+                target[part].widen() + (product[part] >> floor),
+                1,
+            ))
+        });
+        *other = other.map(|word| W::narrow(round_shift(word.widen(), 1)));
+        return 1;
+    }
+    let exponent = exponent as u32;
+    let sum = [0, 1].map(|part| (target[part].widen() << (bits - exponent)) + product[part]);
+    let grown = growth::<W>(sum, exponent as i32).max(0) as u32;
+    *target = sum.map(|wide| W::narrow(round_shift(wide, bits - exponent + grown)));
+    if grown > 0 {
+        *other = other.map(|word| W::narrow(round_shift(word.widen(), grown)));
+    }
+    grown
+}
+
+/// Exact product of an immittance's words with a complex word; parts that are zero cost nothing.
+#[inline(always)]
+fn times<W: Word>(z: &Immittance<W>, word: &[W; 2]) -> [W::Double; 2] {
+    let [re, im] = *word;
+    let zero = W::default();
+    if z.re == zero {
+        [-z.im.times(im), z.im.times(re)]
+    } else if z.im == zero {
+        [z.re.times(re), z.re.times(im)]
+    } else {
+        [
+            z.re.times(re) - z.im.times(im),
+            z.re.times(im) + z.im.times(re),
+        ]
+    }
+}
+
+/// Whether a sum is a state word as it stands.
+#[inline(always)]
+fn fits<W: Word>(sum: W::Double) -> bool {
+    magnitude(sum).to_i64() < W::LIMIT as i64
+}
+
+/// |x| for x ≥ 0, |x| − 1 below: the bits that a sign-extended integer takes beside its sign.
+#[inline(always)]
+fn magnitude<D: DoubleWord>(x: D) -> D {
+    if x < D::ZERO { -x - D::ONE } else { x }
+}
+
+/// By how many powers of two a block must grow so that both sums, times 2^(exponent − W), are
+/// below 2^(W−2) once rounded; zero or less if they are as they stand.
+///
+/// Judged by the upper words alone. The + 1 leaves room for the lower word and the rounding.
+#[inline(always)]
+fn growth<W: Word>(sum: [W::Double; 2], exponent: i32) -> i32 {
+    let upper = |part: W::Double| magnitude(part >> W::BITS);
+    let top = upper(sum[0]).max(upper(sum[1])) + W::Double::ONE;
+    let bits = 64 - top.to_i64().leading_zeros() as i32;
+    bits + exponent - (W::BITS as i32 - 2)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::real::Complex;
+    use crate::scalar::Scalar;
+    use crate::word::Bits;
+    use proptest::prelude::*;
+
+    /// Exact value of a shear in 2^-scale, by 128-bit integers.
+    fn exact<W: Word>(state: &State<W>, z: &Immittance<W>, scale: i32) -> [i128; 2] {
+        let ([v_re, v_im], [i_re, i_im], exponent) = state.words();
+        let [re, im] = z.words().map(i128::from);
+        let (i_re, i_im) = (i128::from(i_re), i128::from(i_im));
+        let product = [re * i_re - im * i_im, re * i_im + im * i_re];
+        [v_re, v_im]
+            .map(i128::from)
+            .into_iter()
+            .zip(product)
+            .map(|(v, p)| (v << (scale + exponent)) + (p << (scale + exponent + z.exponent())))
+            .collect::<Vec<_>>()
+            .try_into()
+            .unwrap()
+    }
+
+    fn in_window<W: Word>(state: &State<W>) -> bool {
+        let (v, i, _) = state.words();
+        v.into_iter()
+            .chain(i)
+            .all(|word| (-W::LIMIT..W::LIMIT).contains(&word))
+    }
+
+    fn check<W: Word>(words: [i32; 4], re: Scalar, im: Scalar) {
+        let [a, b, c, d] = words.map(|word| {
+            let word = word >> (32 - W::BITS + 1);
+            W::from_i32(word.clamp(-W::LIMIT, W::LIMIT - 1))
+        });
+        let before = State {
+            v: [a, b],
+            i: [c, d],
+            exponent: 0,
+        };
+        let z = Immittance::<W>::from_scalars(Complex { re, im });
+        let mut after = before;
+        after.series(&z);
+        assert!(in_window(&after), "{before:?} {z:?} {after:?}");
+        let scale = 60;
+        if z.exponent() >= -scale {
+            let (v, _, exponent) = after.words();
+            let unit = scale + exponent;
+            for (word, exact) in v.into_iter().zip(exact(&before, &z, scale)) {
+                let rounded = (exact + (1 << (unit - 1))) >> unit;
+                assert_eq!(i128::from(word), rounded, "{before:?} {z:?} {after:?}");
+            }
+        }
+        let grown = after.exponent as u32;
+        let expected = before
+            .i
+            .map(|w| round_shift(i64::from(w.to_i32()), grown) as i32);
+        assert_eq!(after.i.map(W::to_i32), expected);
+    }
+
+    proptest! {
+        /// The window holds and the sum is rounded once, for every length and size of immittance.
+        #[test]
+        fn a_shear_is_the_exact_sum_rounded_once(
+            words: [i32; 4], re: i32, im: i32, e in -60..10, f in -60..10, kind in 0..3,
+        ) {
+            let re = if kind == 1 { Scalar::ZERO } else { Scalar::from_i32(re, e) };
+            let im = if kind == 2 { Scalar::ZERO } else { Scalar::from_i32(im, f) };
+            check::<i16>(words, re, im);
+            check::<i32>(words, re, im);
+            check::<Bits<10>>(words, re, im);
+            check::<Bits<21>>(words, re, im);
+        }
+    }
+
+    /// Corners where a sum or a rounding could leave the window.
+    #[test]
+    fn the_window_holds_at_its_corners() {
+        let corners = [i32::MIN, i32::MIN + 1, -1, 0, 1, i32::MAX - 1, i32::MAX];
+        for a in corners {
+            for c in corners {
+                for d in corners {
+                    for exponent in -40..8 {
+                        for re in [0, -i32::MAX, i32::MAX] {
+                            for im in [0, -i32::MAX, i32::MAX] {
+                                let (re, im) = (
+                                    Scalar::from_i32(re, exponent),
+                                    Scalar::from_i32(im, exponent),
+                                );
+                                check::<i16>([a, -(a / 2), c, d], re, im);
+                                check::<i32>([a, -(a / 2), c, d], re, im);
+                            }
+                        }
+                    }
+                }
+            }
+        }
+    }
+
+    proptest! {
+        #[test]
+        fn loads_start_within_the_window(re: i32, im: i32) {
+            let load = Gamma { re, im };
+            prop_assert!(in_window(&State::<i32>::from_load(load)));
+            prop_assert!(in_window(&State::<i16>::from_load(load)));
+            prop_assert!(in_window(&State::<Bits<10>>::from_load(load)));
+            let (v, i, exponent) = State::<i32>::from_load(load).words();
+            let one = f64::from(1 << 30);
+            for (word, exact) in v.into_iter().chain(i).zip([
+                one + f64::from(re), f64::from(im), one - f64::from(re), -f64::from(im),
+            ]) {
+                let unit = 2.0_f64.powi(exponent + 30);
+                prop_assert!((f64::from(word) * unit - exact).abs() <= unit / 2.0);
+            }
+        }
+
+        #[test]
+        fn a_transformer_keeps_the_window_and_rounds_to_half_a_unit(
+            words: [i32; 4], ratio in (1_i32 << 30)..i32::MAX, e in -36..-24,
+        ) {
+            use crate::real::Real;
+            let [a, b, c, d] = words.map(|word| word >> 1).map(|w| w.clamp(-i32::LIMIT, i32::LIMIT - 1));
+            let before = State::<i32> { v: [a, b], i: [c, d], exponent: 0 };
+            let ratio = Scalar::from_i32(ratio, e);
+            let real = |re| Immittance::from_scalars(Complex { re, im: Scalar::ZERO });
+            let (n, inverse) = (real(ratio), real(ratio.reciprocal()));
+            let mut after = before;
+            after.stretch(&n, &inverse);
+            prop_assert!(in_window(&after));
+            let unit = 2.0_f64.powi(after.exponent);
+            for (pair, factor, result) in [(before.v, n, after.v), (before.i, inverse, after.i)] {
+                let factor = f64::from(factor.words()[0]) * 2.0_f64.powi(factor.exponent());
+                for (word, result) in pair.into_iter().zip(result) {
+                    let exact = f64::from(word) * factor;
+                    let error = (f64::from(result) * unit - exact).abs();
+                    prop_assert!(error <= unit * 0.5 + exact.abs() * 1e-15);
+                }
+            }
+        }
+    }
+}
