@@ -28,6 +28,16 @@ impl<R: Copy, const N: usize> Chain<R, N> {
         Ok(Self { stages })
     }
 
+    /// The same chain with every constant converted.
+    pub fn map<S: Copy>(&self, mut convert: impl FnMut(R) -> S) -> Chain<S, N> {
+        let mut stages = Vec::new();
+        for stage in &self.stages {
+            // both have capacity N, so that no stage is left out
+            let _ = stages.push(stage.map(&mut convert));
+        }
+        Chain { stages }
+    }
+
     /// The stages, from the source to the load.
     pub fn stages(&self) -> &[Stage<R>] {
         &self.stages

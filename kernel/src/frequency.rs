@@ -24,6 +24,16 @@ impl<R: Real> Frequency<R> {
         }
     }
 
+    /// The same with f, 1/f and √f converted as they are.
+    pub fn map<S>(&self, mut convert: impl FnMut(R) -> S) -> Frequency<S> {
+        Frequency {
+            hertz: self.hertz,
+            value: convert(self.value),
+            inverse: convert(self.inverse),
+            root: convert(self.root),
+        }
+    }
+
     /// The frequency in hertz.
     pub const fn hertz(&self) -> u32 {
         self.hertz

@@ -47,6 +47,17 @@ pub struct Complex<R> {
     pub im: R,
 }
 
+impl<R> Complex<R> {
+    /// The same with both parts converted.
+    #[inline(always)]
+    pub fn map<S>(self, mut convert: impl FnMut(R) -> S) -> Complex<S> {
+        Complex {
+            re: convert(self.re),
+            im: convert(self.im),
+        }
+    }
+}
+
 impl<R: Real> Complex<R> {
     /// Zero.
     pub const ZERO: Self = Self {

@@ -68,6 +68,26 @@ pub struct Branch<R> {
     pub beside: Option<LossyReactor<R>>,
 }
 
+impl<R: Copy> Branch<R> {
+    pub(super) fn map<S>(&self, convert: &mut impl FnMut(R) -> S) -> Branch<S> {
+        let law = &self.law;
+        Branch {
+            position: self.position,
+            inverted: self.inverted,
+            law: Law {
+                constant: convert(law.constant),
+                rising: law.rising.map(&mut *convert),
+                falling: law.falling.map(&mut *convert),
+            },
+            beside: self.beside.map(|element| LossyReactor {
+                resistance: convert(element.resistance),
+                reactance: convert(element.reactance),
+                falling: element.falling,
+            }),
+        }
+    }
+}
+
 impl<R: Real> Branch<R> {
     #[inline]
     pub(super) fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {

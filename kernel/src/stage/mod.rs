@@ -71,6 +71,34 @@ impl<R: Real> Stage<R> {
     }
 }
 
+impl<R: Copy> Stage<R> {
+    /// The same stage with every constant converted; a line's turns per hertz stay as they are.
+    pub fn map<S>(&self, mut convert: impl FnMut(R) -> S) -> Stage<S> {
+        match self {
+            Self::Branch(branch) => Stage::Branch(branch.map(&mut convert)),
+            Self::Line(line) => Stage::Line(Line {
+                impedance: convert(line.impedance),
+                admittance: convert(line.admittance),
+                turns_per_hertz: line.turns_per_hertz,
+                root_loss: convert(line.root_loss),
+                linear_loss: convert(line.linear_loss),
+            }),
+            Self::Stub(stub) => Stage::Stub(Stub {
+                position: stub.position,
+                function: stub.function,
+                immittance: convert(stub.immittance),
+                turns_per_hertz: stub.turns_per_hertz,
+                root_loss: convert(stub.root_loss),
+                linear_loss: convert(stub.linear_loss),
+            }),
+            Self::Transformer(transformer) => Stage::Transformer(Transformer {
+                ratio: convert(transformer.ratio),
+                inverse: convert(transformer.inverse),
+            }),
+        }
+    }
+}
+
 impl<Z> Step<Z> {
     /// The same step with its immittances converted.
     #[inline(always)]
