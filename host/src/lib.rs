@@ -1,2 +1,3 @@
 //! Prove that a microcontroller's integers are good enough for a chain of two-ports.
 pub mod plan;
+pub mod reference;
