@@ -1,4 +1,8 @@
 //! Prove that a microcontroller's integers are good enough for a chain of two-ports.
+pub mod arithmetic;
+pub mod budget;
+pub mod comparison;
 pub mod constants;
+pub mod envelope;
 pub mod plan;
 pub mod reference;

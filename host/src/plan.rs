@@ -43,6 +43,20 @@ pub struct Band {
     pub points: u32,
 }
 
+impl Band {
+    /// Frequency of a grid point in whole hertz, `index` from 0 to `points` − 1; evenly spaced.
+    pub fn grid(&self, index: u32) -> u32 {
+        let intervals = u64::from(self.points.max(2) - 1);
+        let span = u64::from(self.to - self.from);
+        // from + span · index / intervals, rounded half up
+        let offset = (span * u64::from(index) * 2 + intervals) / (2 * intervals);
+        self.from
+            + u32::try_from(offset)
+                .unwrap_or(u32::MAX)
+                .min(self.to - self.from)
+    }
+}
+
 /// Which reflection coefficients, referred to [`Plan::reference`], the chain may be loaded with.
 #[derive(Clone, Debug, PartialEq)]
 pub enum Loads {
