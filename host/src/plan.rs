@@ -10,6 +10,9 @@ pub const SPEED_OF_LIGHT: f64 = 299_792_458.0;
 /// One neper in decibels: 20 / ln 10 (ISO 80000-3).
 pub const DECIBELS_PER_NEPER: f64 = 20.0 / std::f64::consts::LN_10;
 
+/// Most stages that a chain may have: the room that the firmware keeps for them.
+pub const STAGE_CAPACITY: usize = 16;
+
 /// A chain with all that is needed to evaluate and judge it.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Plan {
@@ -25,7 +28,7 @@ pub struct Plan {
     pub firmware: Firmware,
     /// How good the result has to be.
     pub accuracy: Accuracy,
-    /// Stages from the radio side to the load side; never empty.
+    /// Stages from the radio side to the load side; 1 to [`STAGE_CAPACITY`] of them.
     pub stages: Vec<Stage>,
 }
 
