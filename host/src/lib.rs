@@ -1,8 +1,11 @@
 //! Prove that a microcontroller's integers are good enough for a chain of two-ports.
 pub mod arithmetic;
 pub mod budget;
+pub mod chain_file;
 pub mod comparison;
 pub mod constants;
+pub mod diagnostic;
 pub mod envelope;
 pub mod plan;
+pub mod quantity;
 pub mod reference;
