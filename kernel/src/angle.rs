@@ -9,15 +9,21 @@ use crate::word::round_shift;
 
 /// Position of the electrical angle of a line within its half turn.
 ///
-/// The result h stands for the angle θ = h · π/2 / 2^31, −π/2 ≤ θ < π/2, which differs from the
+/// The result h stands for the angle θ = h · π/2 / 2^63, −π/2 ≤ θ < π/2, which differs from the
 /// line's angle by a whole number of half turns. A half turn only changes the sign of the whole
-/// state. Rounding: to the nearest, at most 2^-34 turns.
+/// state. Exact.
 #[inline]
-pub(crate) fn within_half_turn(hertz: u32, turns_per_hertz: u64) -> i32 {
+pub(crate) fn within_half_turn(hertz: u32, turns_per_hertz: u64) -> i64 {
     let low = product::unsigned(hertz, turns_per_hertz as u32);
     let high = hertz.wrapping_mul((turns_per_hertz >> 32) as u32);
     let turns = low.wrapping_add((high as u64) << 32);
-    ((turns << 1).wrapping_add(1 << 31) >> 32) as i32
+    (turns << 1) as i64
+}
+
+/// The angle in 32 bits, rounded half up; π/2 becomes −π/2, a half turn away.
+#[inline]
+pub(crate) fn rounded(half_angle: i64) -> i32 {
+    (half_angle.wrapping_add(1 << 31) >> 32) as i32
 }
 
 /// Sine (signed, in 2^-31) and cosine (unsigned, in 2^-31) of h · π/4 / 2^31.
@@ -97,8 +103,9 @@ mod tests {
                 let turns = u128::from(rate) * u128::from(hertz);
                 // fraction of a half turn, as a signed number
                 let half = ((turns << 1) as u64) as i64;
+                assert_eq!(within_half_turn(hertz, rate), half);
                 let expected = half as f64 / 2.0_f64.powi(63) * FRAC_PI_2;
-                let h = within_half_turn(hertz, rate);
+                let h = rounded(half);
                 let mut error = f64::from(h) / UNIT * FRAC_PI_2 - expected;
                 error -= (error / (2.0 * FRAC_PI_2)).round() * 2.0 * FRAC_PI_2;
                 let limit = std::f64::consts::TAU * 2.0_f64.powi(-34) * 1.000_001;

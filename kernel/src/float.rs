@@ -46,8 +46,9 @@ macro_rules! real {
                 if self > 0.0 { $sqrt(self) } else { 0.0 }
             }
             #[inline]
-            fn sine_cosine(half_angle: i32) -> (Self, Self) {
-                let angle = half_angle as $float * ($pi_4 / 2_147_483_648.0);
+            fn sine_cosine(half_angle: i64) -> (Self, Self) {
+                // 2^63, exact in either type
+                let angle = half_angle as $float * ($pi_4 / 9_223_372_036_854_775_808.0);
                 ($sin(angle), $cos(angle))
             }
             #[inline]

@@ -25,8 +25,8 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
     fn reciprocal(self) -> Self;
     /// √x; zero where x < 0.
     fn square_root(self) -> Self;
-    /// Sine and cosine of half_angle · π/4 / 2^31, an angle within ±π/4.
-    fn sine_cosine(half_angle: i32) -> (Self, Self);
+    /// Sine and cosine of half_angle · π/4 / 2^63, an angle within ±π/4.
+    fn sine_cosine(half_angle: i64) -> (Self, Self);
     /// Hyperbolic sine and cosine of x ≥ 0.
     fn hyperbolic(self) -> (Self, Self);
     /// Whether the number is zero.

@@ -242,8 +242,8 @@ impl Real for Scalar {
     }
 
     #[inline]
-    fn sine_cosine(half_angle: i32) -> (Self, Self) {
-        let (sine, cosine) = crate::angle::sine_cosine(half_angle);
+    fn sine_cosine(half_angle: i64) -> (Self, Self) {
+        let (sine, cosine) = crate::angle::sine_cosine(crate::angle::rounded(half_angle));
         (Self::from_i32(sine, -31), Self::carry(cosine as i64, -31))
     }
 
