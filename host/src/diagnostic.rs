@@ -18,7 +18,7 @@ pub struct Source<'a> {
 /// `help: what would be right`, without a newline at the end:
 ///
 /// ```text
-/// buoy.toml:14:27: "5 ohm" is a resistance; a capacitance is wanted
+/// buoy.toml:14:25: "5 ohm" is a resistance; a capacitance is wanted
 ///    14 | shunt = { capacitance = "5 ohm" }
 ///       |                         ^^^^^^^
 /// help: write a capacitance, such as "100 pF"
@@ -82,19 +82,22 @@ impl Spot {
     /// moved back to the nearest one that is a character boundary.
     fn locate(text: &str, range: Range<usize>) -> Self {
         let start = boundary(text, range.start);
-        let end = boundary(text, range.end).max(start);
-        let before = &text[..start];
-        let line_start = before.rfind('\n').map_or(0, |newline| newline + 1);
-        let line_end = text[start..]
-            .find('\n')
-            .map_or(text.len(), |length| start + length);
-        let line_text = text[line_start..line_end].trim_end_matches('\r');
-        let marked = &text[start..end.min(line_end)];
+        let end = boundary(text, range.end);
+        let line_start = text[..start].rfind('\n').map_or(0, |newline| newline + 1);
+        let rest = &text[line_start..];
+        // A carriage return ends a line together with the newline behind it, and only so.
+        let line = rest
+            .split_once('\n')
+            .map_or(rest, |(line, _)| line.strip_suffix('\r').unwrap_or(line));
+        // Between a carriage return and its newline there is no column.
+        let line_end = line_start + line.len();
+        let start = start.min(line_end);
+        let end = end.clamp(start, line_end);
         Self {
-            line: count(before.matches('\n').count() + 1),
+            line: count(text[..line_start].matches('\n').count() + 1),
             column: count(text[line_start..start].chars().count() + 1),
-            width: count(marked.trim_end_matches('\r').chars().count().max(1)),
-            text: line_text.to_owned(),
+            width: count(text[start..end].chars().count().max(1)),
+            text: line.to_owned(),
         }
     }
 }
@@ -171,6 +174,13 @@ mod tests {
     #[test]
     fn line_ends_are_not_part_of_the_line() {
         assert_eq!(spot("a\r\nbc\r\nd", 4, 8), (2, 2, 1, "bc".into()));
+        assert_eq!(spot("a\r\nbc", 2, 3), (1, 2, 1, "a".into()));
+    }
+
+    #[test]
+    fn carriage_return_without_newline_is_part_of_the_line() {
+        assert_eq!(spot("a\r\r\nb", 1, 3), (1, 2, 1, "a\r".into()));
+        assert_eq!(spot("a\rb\r", 3, 4), (1, 4, 1, "a\rb\r".into()));
     }
 
     #[test]

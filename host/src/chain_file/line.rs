@@ -86,7 +86,7 @@ fn beyond_limits(low: Point, high: Point, limits: Limits, value: &Value<'_>) -> 
         format!("{} dB at {frequency}", point.attenuation)
     };
     let message = format!(
-        "the loss rises from {} to {}; a line's loss, k1·√f + k2·f, \
+        "the loss goes from {} to {}; a line's loss, k1·√f + k2·f, \
          rises at least as √f and at most as f",
         point(low),
         point(high)

@@ -15,7 +15,7 @@ const BAND: Key = Key::new("band", r#"band = { from = "2 MHz", to = "12 MHz" }"#
 const LOAD: Key = Key::new("load", "load = { swr_up_to = 10 }");
 const FIRMWARE: Key = Key::new("firmware", "firmware = { word_bits = 32 }");
 const ACCURACY: Key = Key::new("accuracy", "accuracy = { gamma = 1e-4 }");
-const STAGE: Key = Key::new("stage", "[[stage]], once for each stage");
+const STAGE: Key = Key::new("stage", "[[stage]] in double brackets, once for each stage");
 
 const FROM: Key = Key::new("from", r#"from = "2 MHz""#);
 const TO: Key = Key::new("to", r#"to = "12 MHz""#);

@@ -36,6 +36,10 @@ pub(super) struct Table<'a> {
 /// How unlike a known key an unknown one may be to pass as a typing error of it:
 /// 1 is equal, 0 has nothing in common (normalised Damerau–Levenshtein distance).
 const LIKENESS: f64 = 0.6;
+/// Likeness of a key to its own beginning, at least.
+const BEGINNING: f64 = 0.8;
+/// A key less like the unknown one than the most alike by no more than this is offered, too.
+const AS_LIKELY: f64 = 0.25;
 
 impl<'a> Table<'a> {
     /// Fails at the first key, in the order of the text, that is not one of `keys`.
@@ -55,8 +59,8 @@ impl<'a> Table<'a> {
             let list: Vec<_> = keys.iter().map(|key| format!("`{}`", key.name)).collect();
             let known = format!("{what} takes {}", list.join(", "));
             let help = match nearest(name, keys) {
-                Some(nearest) => format!("did you mean `{}`? {known}", nearest.name),
-                None => known,
+                nearest if nearest.is_empty() => known,
+                nearest => format!("did you mean {}? {known}", nearest.join(" or ")),
             };
             return Err(source.fault(key.span(), message, help));
         }
@@ -120,19 +124,17 @@ pub(super) fn in_order<'a>(
     entries
 }
 
-/// The key that `name` is most likely a typing error or the beginning of.
-fn nearest(name: &str, keys: &[Key]) -> Option<Key> {
+/// The keys, in backquotes, that `name` is likely a typing error or the beginning of.
+fn nearest(name: &str, keys: &[Key]) -> Vec<String> {
     let name = name.to_lowercase().replace('-', "_");
-    let likeness = |key: Key| {
-        if name.len() >= 3 && key.name.starts_with(&name) {
-            1.0
-        } else {
-            strsim::normalized_damerau_levenshtein(&name, key.name)
-        }
+    let likeness = |key: &Key| {
+        let begins = name.len() >= 3 && key.name.starts_with(&name);
+        let floor = if begins { BEGINNING } else { 0.0 };
+        strsim::normalized_damerau_levenshtein(&name, key.name).max(floor)
     };
+    let best = keys.iter().map(likeness).fold(LIKENESS, f64::max);
     keys.iter()
-        .map(|&key| (key, likeness(key)))
-        .filter(|(_, likeness)| *likeness >= LIKENESS)
-        .max_by(|(_, one), (_, other)| one.total_cmp(other))
-        .map(|(key, _)| key)
+        .filter(|key| likeness(key) >= LIKENESS.max(best - AS_LIKELY))
+        .map(|key| format!("`{}`", key.name))
+        .collect()
 }

@@ -51,13 +51,22 @@ impl<'a> Value<'a> {
         self.source.fault(self.key_range(), message, help)
     }
 
-    /// The value as it is written, cut to what fits a message.
+    /// The value as it is written, cut to what fits a message of one line.
     fn written(&self) -> String {
         let written = self.source.text.get(self.node.span()).unwrap_or_default();
-        match written.char_indices().nth(40) {
-            Some((end, _)) => format!("{}...", &written[..end]),
-            None => written.to_owned(),
-        }
+        let short: String = written
+            .lines()
+            .next()
+            .unwrap_or_default()
+            .chars()
+            .take(40)
+            .collect();
+        let more = if short.len() < written.len() {
+            "..."
+        } else {
+            ""
+        };
+        short + more
     }
 
     /// The key with its value, as messages begin.

@@ -69,6 +69,8 @@ fn a_byte_order_mark_takes_no_column() {
 const BUOY: &str = include_str!("../../examples/tide-gauge-buoy.toml");
 
 proptest! {
+    #![proptest_config(ProptestConfig { failure_persistence: None, ..Default::default() })]
+
     #[test]
     fn a_damaged_file_is_read_or_refused_with_a_place_in_it(
         at in 0..BUOY.len(), length in 0..12usize, new in "[ -~µΩ\\n\\r\\t]{0,6}",
@@ -81,7 +83,7 @@ proptest! {
         if let Err(fault) = parse(&text, "buoy.toml") {
             let spot = fault.spot.as_ref().expect("a fault of the text has a place");
             let line = text.split('\n').nth(spot.line as usize - 1).expect("a line of the file");
-            prop_assert_eq!(line.trim_end_matches('\r'), &spot.text);
+            prop_assert!(line.strip_suffix('\r') == Some(&spot.text) || line == spot.text);
             prop_assert!(spot.column as usize <= spot.text.chars().count() + 1);
             prop_assert!(!fault.message.is_empty() && !fault.help.is_empty());
         }
