@@ -1,0 +1,93 @@
+//! What a chain does over its band with one load: in `f64`, and beside it the firmware's words.
+
+use num_complex::Complex;
+use stagebits_kernel::{Chain, Gamma, Word};
+
+use crate::arithmetic::{to_complex, to_gamma};
+use crate::comparison::Comparison;
+use crate::constants::CAPACITY;
+use crate::plan::Plan;
+use crate::reference::{self, Matrix, Reference, SParameters};
+
+/// The response over the grid of the band.
+#[derive(Clone, Debug)]
+pub struct Response {
+    /// Word length of the firmware's Γ.
+    pub word_bits: u32,
+    /// Load as the firmware takes it in, referred to the reference resistance.
+    pub load: Complex<f64>,
+    /// One entry per grid frequency.
+    pub points: Vec<ResponsePoint>,
+}
+
+/// The response at one frequency. Everything but `word_gamma` is the `f64` reference.
+#[derive(Clone, Debug)]
+pub struct ResponsePoint {
+    /// Frequency in hertz.
+    pub hertz: u32,
+    /// Γ at the input, referred to the reference resistance.
+    pub gamma: Complex<f64>,
+    /// Input impedance in ohms.
+    pub impedance: Complex<f64>,
+    /// Standing wave ratio at the input.
+    pub swr: f64,
+    /// −20 log₁₀ |Γ|, dB.
+    pub return_loss: f64,
+    /// Power in the load over power available from a source of the reference resistance, dB.
+    pub gain: f64,
+    /// Power lost in each stage over power entering it, dB ≥ 0; radio side first.
+    pub stage_losses: Vec<f64>,
+    /// Chain matrix of the whole, in ohms and siemens.
+    pub abcd: Matrix,
+    /// S-parameters of the whole, referred to the reference resistance.
+    pub s: SParameters,
+    /// Γ at the input from the firmware's words.
+    pub word_gamma: Complex<f64>,
+}
+
+/// Evaluates `plan` over its grid with a load of `load` (Γ), the firmware in words of type `W`.
+///
+/// The load is rounded to the format in which firmware takes it, and both sides see that.
+pub fn respond<W: Word>(
+    plan: &Plan,
+    exact: &Chain<f64, CAPACITY>,
+    load: Complex<f64>,
+) -> Response {
+    let load = to_gamma(load);
+    let comparison = Comparison::<W>::new(plan, exact);
+    let reference = Reference::new(plan);
+    let points = (0..plan.band.points)
+        .map(|index| {
+            let hertz = plan.band.grid(index);
+            let word_gamma = comparison.at(hertz).word_gamma(load);
+            point(plan, &reference, hertz, load, word_gamma)
+        })
+        .collect();
+    Response { word_bits: W::BITS, load: to_complex(load), points }
+}
+
+fn point(
+    plan: &Plan,
+    reference: &Reference<'_>,
+    hertz: u32,
+    load: Gamma,
+    word_gamma: Complex<f64>,
+) -> ResponsePoint {
+    let load = to_complex(load);
+    let at = reference.at(f64::from(hertz));
+    let input = at.input_state(load);
+    let gamma = input.gamma();
+    let powers: Vec<f64> = at.states(load).iter().map(|state| state.power()).collect();
+    ResponsePoint {
+        hertz,
+        gamma,
+        impedance: input.impedance(plan.reference),
+        swr: reference::swr(gamma.norm()),
+        return_loss: reference::return_loss_db(gamma.norm()),
+        gain: 10.0 * at.transducer_gain(load).log10(),
+        stage_losses: powers.windows(2).map(|side| 10.0 * (side[0] / side[1]).log10()).collect(),
+        abcd: reference::chain_matrix(&plan.stages, f64::from(hertz)),
+        s: at.s_parameters(),
+        word_gamma,
+    }
+}
