@@ -240,3 +240,16 @@ pub(crate) fn abcd(a: (f64, f64), b: (f64, f64), c: (f64, f64), d: (f64, f64)) -
         })
         .collect()
 }
+
+/// Exact A and D of a symmetric two-port.
+pub(crate) fn diagonal(re: f64, im: f64) -> Vec<Figure> {
+    [Entry::A, Entry::D]
+        .into_iter()
+        .flat_map(|entry| {
+            [
+                exact(Quantity::Entry(entry, Component::Re), re),
+                exact(Quantity::Entry(entry, Component::Im), im),
+            ]
+        })
+        .collect()
+}

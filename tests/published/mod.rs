@@ -8,9 +8,12 @@
 #![allow(dead_code, reason = "shared by several test programs")]
 
 pub(crate) mod build;
+mod cables;
 mod filters;
+mod ladders;
 mod lines;
 mod matching;
+mod networks;
 mod pads;
 mod power;
 mod prototypes;
@@ -192,8 +195,11 @@ impl Chain {
 pub(crate) fn chains() -> Vec<Chain> {
     [
         two_ports::chains(),
+        networks::chains(),
         matching::chains(),
         lines::chains(),
+        cables::chains(),
+        ladders::chains(),
         filters::chains(),
         pads::chains(),
         power::chains(),
