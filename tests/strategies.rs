@@ -104,31 +104,25 @@ fn stage(dissipation: Dissipation, hertz: f64) -> impl Strategy<Value = Stage> {
 fn branch(dissipation: Dissipation, hertz: f64) -> impl Strategy<Value = Branch> {
     let omega = TAU * hertz;
     let arrangement = prop::sample::select(vec![Arrangement::Series, Arrangement::Parallel]);
-    let resistance = match dissipation {
-        Dissipation::None => Just(None).boxed(),
-        Dissipation::Allowed => prop::option::of(ohms()).boxed(),
+    // Bit 0: coil, bit 1: capacitor, bit 2: resistor; at least one of them.
+    let present = match dissipation {
+        Dissipation::None => 1_u8..4,
+        Dissipation::Allowed => 1..8,
     };
-    let inductor = prop::option::of(reactor(dissipation, move |x| x / omega));
-    let capacitor = prop::option::of(reactor(dissipation, move |x| 1.0 / (omega * x)));
-    (arrangement, resistance, inductor, capacitor)
-        .prop_filter("at least one element", |(_, r, l, c)| {
-            r.is_some() || l.is_some() || c.is_some()
-        })
-        .prop_map(|(arrangement, resistance, inductor, capacitor)| {
-            let elements = usize::from(resistance.is_some())
-                + usize::from(inductor.is_some())
-                + usize::from(capacitor.is_some());
-            Branch {
-                arrangement: if elements == 1 {
-                    Arrangement::Series
-                } else {
-                    arrangement
-                },
-                resistance,
-                inductor,
-                capacitor,
-            }
-        })
+    let inductor = reactor(dissipation, move |x| x / omega);
+    let capacitor = reactor(dissipation, move |x| 1.0 / (omega * x));
+    (present, arrangement, ohms(), inductor, capacitor).prop_map(
+        |(present, arrangement, resistance, inductor, capacitor)| Branch {
+            arrangement: if present.is_power_of_two() {
+                Arrangement::Series
+            } else {
+                arrangement
+            },
+            resistance: (present & 4 != 0).then_some(resistance),
+            inductor: (present & 1 != 0).then_some(inductor),
+            capacitor: (present & 2 != 0).then_some(capacitor),
+        },
+    )
 }
 
 fn reactor(
