@@ -18,6 +18,7 @@ mod pads;
 mod power;
 mod prototypes;
 mod quantity;
+#[path = "../tolerance.rs"]
 pub(crate) mod tolerance;
 mod two_ports;
 mod works;

@@ -1,4 +1,7 @@
-//! The one table of tolerances for everything checked against the f64 reference.
+//! The one table of tolerances for the checks of the f64 reference.
+
+// Each test program uses its own part of this shared table.
+#![allow(dead_code, reason = "shared by several test programs")]
 
 /// For values known to 16 digits and more: relative to the value or to the natural scale of the
 /// quantity, whichever is larger. The eleven stages of the longest ladder need 3e-14 of it.
@@ -6,6 +9,16 @@ pub(crate) const EXACT: f64 = 1e-13;
 
 /// Rounding allowed on the edge of a printed figure's half unit, relative to the half unit.
 pub(crate) const PRINTED_EDGE: f64 = 1e-9;
+
+/// One part worked out by hand, relative: a few dozen roundings of the same quantity.
+pub(crate) const SINGLE_PART: f64 = 1e-14;
+
+/// Γ to impedance and back, absolute.
+pub(crate) const CONVERSION: f64 = 8.0 * f64::EPSILON;
+
+/// Properties of random chains: roundings per stage in one entry, to be multiplied by the product
+/// of the magnitudes of the stage matrices. 200 000 chains each get by with one.
+pub(crate) const ROUNDINGS_PER_STAGE: f64 = 4.0;
 
 /// `value` against a value known to full precision.
 pub(crate) fn exact(value: f64, exact: f64, scale: f64) -> Result<(), String> {
