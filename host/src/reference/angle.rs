@@ -73,18 +73,20 @@ mod tests {
         }
     }
 
-    /// Against integer arithmetic: velocity 21/32 and whole metres make the number of turns a
-    /// rational number whose fraction 128-bit integers give exactly. At the longest of these lines,
-    /// two million turns, the plain product f × delay would be off by 2⁻³³ turn.
+    /// Against integer arithmetic: the velocity factor is an integer times 2⁻⁵³ and the length in
+    /// whole metres, so 128-bit integers give the fraction of a turn exactly. At the longest of
+    /// these lines, two million turns, the plain product f × delay would be off by 2⁻³³ turn.
     #[test]
     fn agrees_with_exact_rationals() {
+        let velocity = 0.66_f64;
+        let scaled_velocity = (velocity * (1_u64 << 53) as f64) as u128;
         for metres in [1_u32, 7, 1234, 98_765] {
             for hertz in [1_u32, 1_850_000, 433_920_000, 4_294_967_295] {
-                let numerator = u128::from(hertz) * u128::from(metres) * 32;
-                let denominator = 21 * 299_792_458_u128;
+                let numerator = (u128::from(hertz) * u128::from(metres)) << 53;
+                let denominator = scaled_velocity * 299_792_458;
                 let turns = (numerator % denominator) as f64 / denominator as f64;
-                let (sin, cos) =
-                    sin_cos(&lossless(f64::from(metres), 21.0 / 32.0), f64::from(hertz));
+                let line = lossless(f64::from(metres), velocity);
+                let (sin, cos) = sin_cos(&line, f64::from(hertz));
                 let (expected_sin, expected_cos) = (TAU * turns).sin_cos();
                 // `TAU * turns` here is not reduced to a quadrant: up to an ulp of 2π in the angle.
                 let slack = 6.0 * f64::EPSILON;

@@ -103,7 +103,7 @@ impl Matrix {
         quotient(voltage, current)
     }
 
-    /// Of an ohmic, reciprocal or not, matrix: impedance in ohms seen at the load side with
+    /// Of an ohmic matrix: impedance in ohms seen at the load side with
     /// `source` ohms at the radio side, (D·ZS + B)/(C·ZS + A).
     pub fn output_impedance(&self, source: Complex<f64>) -> Complex<f64> {
         quotient(self.d * source + self.b, self.c * source + self.a)
