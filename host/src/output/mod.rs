@@ -1,0 +1,4 @@
+//! Renderings of results: text and JSON.
+
+pub mod figures;
+pub mod table;
