@@ -3,11 +3,13 @@
 use num_complex::Complex;
 use stagebits_kernel::{Chain, Word};
 
-use crate::arithmetic::to_complex;
-use crate::comparison::{Comparison, ComparisonPoint, Split, StageSource};
+use crate::comparison::{Comparison, ComparisonPoint, Split};
 use crate::constants::CAPACITY;
 use crate::envelope::{Effort, Envelope, Point, Survey};
-use crate::plan::Plan;
+use crate::plan::{Accuracy, Plan};
+
+/// Largest closure that the rounding of `f64` can account for.
+pub const CLOSURE_LIMIT: f64 = 1e-12;
 
 /// How many of the worst points the local ascent starts from.
 const ASCENTS: usize = 12;
@@ -56,6 +58,8 @@ pub struct Budget {
     pub word_bits: u32,
     /// Points and seed asked for.
     pub effort: Effort,
+    /// Points of the envelope evaluated: at least as many as asked for.
+    pub surveyed: u64,
     /// Points evaluated, those of the ascent included.
     pub evaluations: u64,
     /// Where the error is largest.
@@ -82,6 +86,11 @@ impl Budget {
     /// Largest |ΔΓ| found.
     pub fn worst_error(&self) -> f64 {
         self.total.at_worst.norm()
+    }
+
+    /// Whether the largest |ΔΓ| found is good enough.
+    pub fn meets(&self, accuracy: Accuracy) -> bool {
+        self.worst_error() <= accuracy.gamma
     }
 }
 
@@ -216,6 +225,7 @@ impl Tally {
         Budget {
             word_bits,
             effort,
+            surveyed: self.total.count,
             evaluations,
             worst,
             total: line(split.total, self.total),
@@ -253,14 +263,4 @@ pub fn share(contribution: Complex<f64>, total: Complex<f64>) -> f64 {
         return 0.0;
     }
     (contribution * total.conj()).re / total.norm_sqr()
-}
-
-/// The load of a point as a complex reflection coefficient.
-pub fn load(point: Point) -> Complex<f64> {
-    to_complex(point.load)
-}
-
-/// Names of the sources, in the order of [`Budget::by_source`].
-pub fn source_names() -> impl Iterator<Item = &'static str> {
-    StageSource::ALL.into_iter().map(StageSource::name)
 }

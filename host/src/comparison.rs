@@ -36,7 +36,17 @@ impl StageSource {
         Self::Products,
     ];
 
-    /// What the source is called in every output.
+    /// The source's key in JSON.
+    pub const fn key(self) -> &'static str {
+        match self {
+            Self::Constants => "constants",
+            Self::Frequency => "frequency",
+            Self::Immittance => "immittances",
+            Self::Products => "products",
+        }
+    }
+
+    /// What the source is called in text.
     pub const fn name(self) -> &'static str {
         match self {
             Self::Constants => "stored constants",

@@ -7,7 +7,7 @@
 use std::f64::consts::TAU;
 
 use stagebits_kernel as kernel;
-use stagebits_kernel::{Chain, Complex, Law, LossyReactor, Scalar, StubFunction, TooManyStages};
+use stagebits_kernel::{Chain, Complex, Law, LossyReactor, Scalar, StubFunction};
 
 use crate::plan::{Arrangement, Branch, Line, Loss, Part, Plan, Position, Reactor, Termination};
 
@@ -16,9 +16,9 @@ pub const CAPACITY: usize = crate::plan::STAGE_CAPACITY;
 
 /// The chain with its constants in `f64`.
 ///
-/// # Errors
+/// # Panics
 /// If the plan has more stages than [`CAPACITY`]; the chain file reader lets none through.
-pub fn exact(plan: &Plan) -> Result<Chain<f64, CAPACITY>, TooManyStages> {
+pub fn exact(plan: &Plan) -> Chain<f64, CAPACITY> {
     let reference = plan.reference;
     let stages: Vec<_> = plan
         .stages
@@ -37,7 +37,7 @@ pub fn exact(plan: &Plan) -> Result<Chain<f64, CAPACITY>, TooManyStages> {
             }),
         })
         .collect();
-    Chain::new(&stages)
+    Chain::new(&stages).expect("a plan has at most CAPACITY stages")
 }
 
 /// The chain with each constant rounded to a word of `word_bits` and an exponent.

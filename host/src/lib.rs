@@ -2,6 +2,7 @@
 pub mod arithmetic;
 pub mod budget;
 pub mod chain_file;
+pub mod cli;
 pub mod comparison;
 pub mod constants;
 pub mod diagnostic;

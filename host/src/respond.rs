@@ -48,11 +48,7 @@ pub struct ResponsePoint {
 /// Evaluates `plan` over its grid with a load of `load` (Γ), the firmware in words of type `W`.
 ///
 /// The load is rounded to the format in which firmware takes it, and both sides see that.
-pub fn respond<W: Word>(
-    plan: &Plan,
-    exact: &Chain<f64, CAPACITY>,
-    load: Complex<f64>,
-) -> Response {
+pub fn respond<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, load: Complex<f64>) -> Response {
     let load = to_gamma(load);
     let comparison = Comparison::<W>::new(plan, exact);
     let reference = Reference::new(plan);
@@ -63,7 +59,11 @@ pub fn respond<W: Word>(
             point(plan, &reference, hertz, load, word_gamma)
         })
         .collect();
-    Response { word_bits: W::BITS, load: to_complex(load), points }
+    Response {
+        word_bits: W::BITS,
+        load: to_complex(load),
+        points,
+    }
 }
 
 fn point(
@@ -85,7 +85,10 @@ fn point(
         swr: reference::swr(gamma.norm()),
         return_loss: reference::return_loss_db(gamma.norm()),
         gain: 10.0 * at.transducer_gain(load).log10(),
-        stage_losses: powers.windows(2).map(|side| 10.0 * (side[0] / side[1]).log10()).collect(),
+        stage_losses: powers
+            .windows(2)
+            .map(|side| 10.0 * (side[0] / side[1]).log10())
+            .collect(),
         abcd: reference::chain_matrix(&plan.stages, f64::from(hertz)),
         s: at.s_parameters(),
         word_gamma,

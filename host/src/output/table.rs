@@ -11,7 +11,9 @@ impl Table {
     /// A table with these headings.
     pub fn new<S: Into<String>>(headings: impl IntoIterator<Item = S>) -> Self {
         let headings = headings.into_iter().map(Into::into).collect();
-        Self { rows: vec![headings] }
+        Self {
+            rows: vec![headings],
+        }
     }
 
     /// Adds a row.

@@ -1,0 +1,7 @@
+//! The command line: raw arguments → a checked request → its run. `main` owns the exit codes.
+
+mod arguments;
+mod run;
+
+pub use arguments::Arguments;
+pub use run::{Failure, Outcome, run};

@@ -1,0 +1,166 @@
+//! From arguments to a written result.
+
+use std::io::{self, Write};
+use std::path::Path;
+
+use num_complex::Complex;
+use stagebits_kernel::Bits;
+
+use super::arguments::{self, Arguments, Command, Common};
+use crate::budget::{Budget, budget};
+use crate::chain_file;
+use crate::constants;
+use crate::diagnostic::Diagnostic;
+use crate::envelope::Effort;
+use crate::output::{json, text};
+use crate::plan::{Loads, Plan};
+use crate::quantity::{self, Dimension};
+use crate::reference;
+use crate::respond::respond;
+
+/// How a run that produced its result ended.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Outcome {
+    /// The accuracy wanted is met, or none was asked about.
+    Met,
+    /// The accuracy wanted is not met.
+    NotMet,
+}
+
+/// Why a run produced no result.
+#[derive(Debug)]
+pub enum Failure {
+    /// The chain file is at fault.
+    Input(Diagnostic),
+    /// An argument is at fault: what is wrong and what would be right.
+    Usage(String),
+    /// The result could not be written.
+    Write(String),
+}
+
+/// Calls a generic function with the word type of a length from 10 to 32 bits.
+macro_rules! with_word {
+    ($bits:expr, $function:ident($($argument:expr),*)) => {
+        with_word!(@ $bits, $function($($argument),*),
+            10 11 12 13 14 15 17 18 19 20 21 22 23 24 25 26 27 28 29 30 31)
+    };
+    (@ $bits:expr, $function:ident $arguments:tt, $($width:literal)*) => {
+        match $bits {
+            16 => $function::<i16> $arguments,
+            $($width => $function::<Bits<$width>> $arguments,)*
+            _ => $function::<i32> $arguments,
+        }
+    };
+}
+
+/// Does what the arguments ask for.
+///
+/// # Errors
+/// [`Failure`] where there is no result; nothing has been written to standard output then, and
+/// an output file is as it was before.
+pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
+    match &arguments.command {
+        Command::Respond(request) => run_respond(request),
+        Command::Budget(request) => run_budget(request),
+    }
+}
+
+fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
+    let plan = read(&request.common)?;
+    let exact = constants::exact(&plan);
+    let load = match &request.load {
+        Some(text) => load(text, &plan)?,
+        None => match &plan.loads {
+            Loads::Impedances(list) => Complex::new(list[0].0, list[0].1),
+            Loads::SwrUpTo(_) => Complex::new(plan.reference, 0.0),
+        },
+    };
+    let gamma = reference::gamma_from_impedance(load, plan.reference);
+    let response = with_word!(plan.firmware.word_bits, respond(&plan, &exact, gamma));
+    let rendering = if request.common.json {
+        json::response(&plan, &response)
+    } else {
+        text::response(&plan, &response)
+    };
+    write(&request.common, &rendering)?;
+    Ok(Outcome::Met)
+}
+
+fn run_budget(request: &arguments::Budget) -> Result<Outcome, Failure> {
+    let plan = read(&request.common)?;
+    let exact = constants::exact(&plan);
+    let effort = Effort {
+        points: request.points,
+        seed: request.seed,
+    };
+    let result: Budget = with_word!(plan.firmware.word_bits, budget(&plan, &exact, effort));
+    let rendering = if request.common.json {
+        json::budget(&plan, &result)
+    } else {
+        text::budget(&plan, &result)
+    };
+    write(&request.common, &rendering)?;
+    Ok(if result.meets(plan.accuracy) {
+        Outcome::Met
+    } else {
+        Outcome::NotMet
+    })
+}
+
+fn read(common: &Common) -> Result<Plan, Failure> {
+    let mut plan = chain_file::read(&common.file).map_err(Failure::Input)?;
+    if let Some(bits) = common.word_bits {
+        plan.firmware.word_bits = bits;
+    }
+    Ok(plan)
+}
+
+/// A load written as 'R, X' in ohms.
+fn load(text: &str, plan: &Plan) -> Result<Complex<f64>, Failure> {
+    let usage = |what: &str| {
+        Failure::Usage(format!(
+            "--load '{text}': {what}; write resistance and reactance, such as '36 ohm, -120 ohm'"
+        ))
+    };
+    let Some((r, x)) = text.split_once(',') else {
+        return Err(usage("there is no comma"));
+    };
+    let ohms = |part: &str| {
+        quantity::parse(part.trim(), Dimension::Resistance).map_err(|error| usage(&error.message))
+    };
+    let load = Complex::new(ohms(r)?, ohms(x)?);
+    let largest = *Dimension::Resistance.limits().end();
+    if load.re < 0.0 {
+        return Err(usage("a passive load has no negative resistance"));
+    }
+    if load.norm() > largest * plan.reference.max(1.0) {
+        return Err(usage("this is beyond every load"));
+    }
+    Ok(load)
+}
+
+/// Writes a result: to standard output, or to a temporary file that then takes the place of the
+/// one named, so that a reader sees the old or the new one and never a part.
+fn write(common: &Common, rendering: &str) -> Result<(), Failure> {
+    let Some(path) = &common.output else {
+        let mut stdout = io::stdout().lock();
+        return match stdout
+            .write_all(rendering.as_bytes())
+            .and_then(|()| stdout.flush())
+        {
+            // the reader has seen what it wanted
+            Err(error) if error.kind() == io::ErrorKind::BrokenPipe => Ok(()),
+            result => result.map_err(|error| Failure::Write(format!("standard output: {error}"))),
+        };
+    };
+    let failed = |error: io::Error| Failure::Write(format!("{}: {error}", path.display()));
+    let folder = match path.parent() {
+        Some(folder) if folder != Path::new("") => folder,
+        _ => Path::new("."),
+    };
+    let mut file = tempfile::NamedTempFile::new_in(folder).map_err(failed)?;
+    file.write_all(rendering.as_bytes()).map_err(failed)?;
+    file.as_file().sync_all().map_err(failed)?;
+    file.persist(path).map_err(|error| failed(error.error))?;
+    Ok(())
+}

@@ -1,0 +1,202 @@
+//! Results as text of at most 80 columns.
+
+use std::fmt::Write;
+
+use super::figures::{complex, engineering, error, frequency, grouped};
+use super::table::Table;
+use crate::arithmetic::to_complex;
+use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
+use crate::comparison::StageSource;
+use crate::plan::Plan;
+use crate::reference::impedance_from_gamma;
+use crate::respond::Response;
+
+/// Widest name of a stage that a table shows in full.
+const NAME_WIDTH: usize = 30;
+
+/// The response as a table over frequency.
+pub fn response(plan: &Plan, response: &Response) -> String {
+    let load = impedance_from_gamma(response.load, plan.reference);
+    let mut text = format!(
+        "{}\nload {}, reference {}; |ΔΓ|: words of {} bits against f64\n\n",
+        plan.title,
+        ohms(load),
+        engineering(plan.reference, "ohm", 4),
+        response.word_bits,
+    );
+    let mut table = Table::new([
+        "MHz", "|Γ|", "∠Γ °", "R ohm", "X ohm", "SWR", "RL dB", "gain dB", "|ΔΓ|",
+    ]);
+    for point in &response.points {
+        table.row([
+            format!("{:.6}", f64::from(point.hertz) / 1e6),
+            format!("{:.5}", point.gamma.norm()),
+            format!("{:.2}", point.gamma.arg().to_degrees()),
+            significant(point.impedance.re),
+            significant(point.impedance.im),
+            significant(point.swr),
+            format!("{:.2}", point.return_loss),
+            format!("{:.3}", point.gain),
+            error((point.word_gamma - point.gamma).norm()),
+        ]);
+    }
+    text.push_str(&table.text(0));
+    let losses = response
+        .points
+        .iter()
+        .max_by(|a, b| total(&a.stage_losses).total_cmp(&total(&b.stage_losses)));
+    if let Some(point) = losses {
+        let _ = writeln!(
+            text,
+            "\nloss by stage at {}, where the chain loses most, dB",
+            frequency(point.hertz),
+        );
+        let mut table = Table::new(["stage", "dB"]);
+        for (stage, loss) in plan.stages.iter().zip(&point.stage_losses) {
+            table.row([shortened(&stage.name), format!("{:.3}", loss.max(0.0))]);
+        }
+        table.row([
+            "whole chain".to_owned(),
+            format!("{:.3}", total(&point.stage_losses)),
+        ]);
+        text.push_str(&table.text(2));
+    }
+    text
+}
+
+fn total(losses: &[f64]) -> f64 {
+    losses.iter().sum::<f64>().max(0.0)
+}
+
+/// The budget: the verdict first, then stages and sources.
+pub fn budget(plan: &Plan, budget: &Budget) -> String {
+    let wanted = plan.accuracy.gamma;
+    let worst = budget.worst_error();
+    let verdict = if budget.meets(plan.accuracy) {
+        format!("met, {} times better than wanted", times(wanted / worst))
+    } else {
+        format!("NOT met, {} times worse than wanted", times(worst / wanted))
+    };
+    let load = to_complex(budget.worst.load);
+    let mut text = format!("{}\n", plan.title);
+    let mut line = |label: &str, value: String| {
+        let _ = writeln!(text, "{label:<12}{value}");
+    };
+    line("accuracy", verdict);
+    line(
+        "worst |ΔΓ|",
+        format!("{} found, {} wanted", error(worst), error(wanted)),
+    );
+    line("rms |ΔΓ|", error(budget.total.spread.rms()));
+    line("words", format!("{} bits, block", budget.word_bits));
+    line(
+        "worst at",
+        format!(
+            "{}, load Γ {} ({})",
+            frequency(budget.worst.hertz),
+            complex(load, 4),
+            ohms(impedance_from_gamma(load, plan.reference)),
+        ),
+    );
+    line(
+        "points",
+        format!(
+            "{} and {} of the local ascent, seed {}",
+            grouped(budget.effort.points),
+            grouped(budget.evaluations - budget.surveyed),
+            budget.effort.seed,
+        ),
+    );
+    line(
+        "closure",
+        format!(
+            "{} of {} allowed",
+            error(budget.closure),
+            error(CLOSURE_LIMIT)
+        ),
+    );
+
+    text.push_str(
+        "\n|ΔΓ| by stage, radio side first; share: part of the error at the worst point\n",
+    );
+    let mut table = Table::new(["", "at worst", "share", "rms", "worst"]);
+    let add = |table: &mut Table, name: &str, line: &Contribution| {
+        table.row([
+            shortened(name),
+            error(line.at_worst.norm()),
+            format!(
+                "{:.1} %",
+                100.0 * share(line.at_worst, budget.total.at_worst) + 0.0
+            ),
+            error(line.spread.rms()),
+            error(line.spread.worst),
+        ]);
+    };
+    for (stage, line) in plan.stages.iter().zip(&budget.by_stage) {
+        add(&mut table, &stage.name, line);
+    }
+    add(&mut table, "(load to words)", &budget.load);
+    add(&mut table, "(reading Γ)", &budget.readout);
+    add(&mut table, "total", &budget.total);
+    text.push_str(&table.text(2));
+
+    text.push_str("\n|ΔΓ| by source, all stages together\n");
+    let mut table = Table::new(["", "at worst", "share", "rms", "worst"]);
+    for (source, line) in StageSource::ALL.into_iter().zip(&budget.by_source) {
+        add(&mut table, source.name(), line);
+    }
+    text.push_str(&table.text(2));
+
+    text.push_str("\n|ΔΓ| at the worst point, stage by source\n");
+    let mut table = Table::new(["", "constants", "frequency", "immittances", "products"]);
+    for (stage, sources) in plan.stages.iter().zip(&budget.stages) {
+        let cells = sources.iter().map(|line| error(line.at_worst.norm()));
+        table.row(std::iter::once(shortened(&stage.name)).chain(cells));
+    }
+    text.push_str(&table.text(2));
+    text
+}
+
+/// An impedance: `210.2 − 168.1j ohm`.
+fn ohms(z: num_complex::Complex<f64>) -> String {
+    if !z.is_finite() || z.norm() > 1e9 {
+        return "open".to_owned();
+    }
+    format!("{} ohm", complex(z, 1))
+}
+
+/// Five significant digits without an exponent, or with one where that would be long.
+fn significant(value: f64) -> String {
+    let magnitude = value.abs();
+    if !value.is_finite() {
+        "∞".to_owned()
+    } else if magnitude >= 1e5 || (magnitude < 1e-3 && magnitude > 0.0) {
+        format!("{value:.1e}")
+    } else {
+        let whole = (magnitude.max(1.0).log10().floor() as usize) + 1;
+        format!("{value:.*}", 5_usize.saturating_sub(whole).min(3))
+    }
+}
+
+/// A share in tenths of a percent, without a sign where it rounds to zero.
+fn percent(share: f64) -> String {
+    // adding zero turns −0 into 0
+    format!("{:.1} %", (share * 1000.0).round() / 10.0 + 0.0)
+}
+
+/// A ratio of at least 1 in two to four digits.
+fn times(ratio: f64) -> String {
+    if ratio < 100.0 {
+        format!("{ratio:.1}")
+    } else {
+        grouped(ratio.min(1e18) as u64)
+    }
+}
+
+fn shortened(name: &str) -> String {
+    if name.chars().count() <= NAME_WIDTH {
+        return name.to_owned();
+    }
+    let kept: String = name.chars().take(NAME_WIDTH - 1).collect();
+    format!("{kept}…")
+}
