@@ -124,10 +124,7 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
         table.row([
             shortened(name),
             error(line.at_worst.norm()),
-            format!(
-                "{:.1} %",
-                100.0 * share(line.at_worst, budget.total.at_worst) + 0.0
-            ),
+            percent(share(line.at_worst, budget.total.at_worst)),
             error(line.spread.rms()),
             error(line.spread.worst),
         ]);
