@@ -66,11 +66,16 @@ impl<W: Word> State<W> {
     pub(crate) fn stretch(&mut self, of_v: &Immittance<W>, of_i: &Immittance<W>) {
         let v = self.v.map(|word| word.times(of_v.re));
         let i = self.i.map(|word| word.times(of_i.re));
-        let need = |pair, exponent: i8| growth::<W>(pair, exponent as i32);
+        // the product times 2^(exponent − W) must be within a word after growth
+        let need = |pair: [W::Double; 2], exponent: i8| {
+            let top = magnitude(W::upper(pair[0], 0)) | magnitude(W::upper(pair[1], 0));
+            let bits = 32 - (top + 1).leading_zeros() as i32;
+            bits + exponent as i32 - (W::BITS as i32 - 2)
+        };
         let grown = need(v, of_v.exponent).max(need(i, of_i.exponent)).max(0);
         let settle = |product: W::Double, exponent: i8| {
             let right = W::BITS as i32 - exponent as i32 + grown;
-            W::narrow(round_shift(product, right.unsigned_abs()))
+            W::from_i32(round_shift(product, right.unsigned_abs()).to_i64() as i32)
         };
         self.v = v.map(|product| settle(product, of_v.exponent));
         self.i = i.map(|product| settle(product, of_i.exponent));
@@ -81,44 +86,54 @@ impl<W: Word> State<W> {
 /// target ← target + z · other, with both kept in one block; returns by how many powers of two
 /// the block has grown.
 ///
-/// The complex product and the target are summed at full width and rounded once. Headroom: words
-/// are at most 2^(W−2), mantissas below 2^(W−1), so the product's parts stay below 2^(2W−2).
+/// The complex product and the target are summed at full width and rounded once, half up.
+/// Headroom: words of the state are within ±2^(W−2) and those of z below it, so the parts of the product
+/// stay below 2^(2W−3). With the immittance's exponent k:
 ///
-/// - Exponent k ≤ 0, |z| parts below 1/2: the product adds at most 2^(W−2), so the sum fits a
-///   word and the block grows by at most one.
+/// - k ≤ 0, parts of z below 1/4: the product adds less than 2^(W−3), so the sum fits a word and
+///   the block grows by at most one.
 /// - k ≥ 1: the target is raised to the product's scale, 2^(W−k) per unit, where the sum stays
-///   below 1.5 · 2^(2W−2); its size tells by how much the block must grow, at most k + 1.
+///   below 2^(2W−2) − 2^W; the block grows until the sum fits, by k at most. That is judged by the
+///   bits in the upper halves of both parts and one more, so that rounding has room.
 #[inline(always)]
 fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) -> u32 {
     let product = times(z, other);
-    let bits = W::BITS;
+    let word = target.map(W::to_i32);
     let exponent = z.exponent as i32;
     if exponent <= 0 {
-        let right = bits + exponent.unsigned_abs();
-        let sum = [0, 1].map(|part| target[part].widen() + round_shift(product[part], right));
-        if fits::<W>(sum[0]) && fits::<W>(sum[1]) {
-            *target = sum.map(W::narrow);
+        // one bit below the word's last place
+        let right = exponent.unsigned_abs() & 31;
+        let low = product.map(|part| W::upper(part, 1) >> right);
+        let sum = [0, 1].map(|part| word[part] + round_half(low[part]));
+        if magnitude(sum[0]) | magnitude(sum[1]) < W::LIMIT {
+            *target = sum.map(W::from_i32);
             return 0;
         }
-        // one place more: rounded once from the same exact sum
-        let floor = right.min(W::Double::BITS - 1);
-        *target = [0, 1].map(|part| {
-            W::narrow(round_shift(
-                target[part].widen() + (product[part] >> floor),
-                1,
-            ))
-        });
-        *other = other.map(|word| W::narrow(round_shift(word.widen(), 1)));
+        // floor of the sum and one place more: rounded once from the same exact sum
+        *target = [0, 1].map(|part| W::from_i32(round_half(word[part] + (low[part] >> 1))));
+        *other = other.map(|word| W::from_i32(round_half(word.to_i32())));
         return 1;
     }
     let exponent = exponent as u32;
-    let sum = [0, 1].map(|part| (target[part].widen() << (bits - exponent)) + product[part]);
-    let grown = growth::<W>(sum, exponent as i32).max(0) as u32;
-    *target = sum.map(|wide| W::narrow(round_shift(wide, bits - exponent + grown)));
+    let sum = [0, 1].map(|part| target[part].raised(exponent) + product[part]);
+    let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
+    // bits from the sum's top to one below the word's last place
+    let mut up = exponent + 1;
+    while up > 1 && (top + 1) >> (W::BITS - 1 - up) != 0 {
+        up -= 1;
+    }
+    *target = sum.map(|sum| W::from_i32(round_half(W::upper(sum, up))));
+    let grown = exponent + 1 - up;
     if grown > 0 {
-        *other = other.map(|word| W::narrow(round_shift(word.widen(), grown)));
+        *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
     }
     grown
+}
+
+/// x/2, rounded half up.
+#[inline(always)]
+fn round_half(x: i32) -> i32 {
+    (x + 1) >> 1
 }
 
 /// Exact product of an immittance's words with a complex word; parts that are zero cost nothing.
@@ -138,28 +153,10 @@ fn times<W: Word>(z: &Immittance<W>, word: &[W; 2]) -> [W::Double; 2] {
     }
 }
 
-/// Whether a sum is a state word as it stands.
+/// x for x ≥ 0, −1 − x below: the bits that the integer takes beside its sign.
 #[inline(always)]
-fn fits<W: Word>(sum: W::Double) -> bool {
-    magnitude(sum).to_i64() < W::LIMIT as i64
-}
-
-/// |x| for x ≥ 0, |x| − 1 below: the bits that a sign-extended integer takes beside its sign.
-#[inline(always)]
-fn magnitude<D: DoubleWord>(x: D) -> D {
-    if x < D::ZERO { -x - D::ONE } else { x }
-}
-
-/// By how many powers of two a block must grow so that both sums, times 2^(exponent − W), are
-/// below 2^(W−2) once rounded; zero or less if they are as they stand.
-///
-/// Judged by the upper words alone. The + 1 leaves room for the lower word and the rounding.
-#[inline(always)]
-fn growth<W: Word>(sum: [W::Double; 2], exponent: i32) -> i32 {
-    let upper = |part: W::Double| magnitude(part >> W::BITS);
-    let top = upper(sum[0]).max(upper(sum[1])) + W::Double::ONE;
-    let bits = 64 - top.to_i64().leading_zeros() as i32;
-    bits + exponent - (W::BITS as i32 - 2)
+fn magnitude(x: i32) -> i32 {
+    x ^ (x >> 31)
 }
 
 #[cfg(test)]

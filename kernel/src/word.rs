@@ -34,8 +34,6 @@ pub trait DoubleWord:
     const BITS: u32;
     /// The integer 1.
     const ONE: Self;
-    /// The integer 0.
-    const ZERO: Self;
     /// The same integer, sign-extended.
     fn to_i64(self) -> i64;
 }
@@ -43,7 +41,6 @@ pub trait DoubleWord:
 impl DoubleWord for i32 {
     const BITS: u32 = 32;
     const ONE: Self = 1;
-    const ZERO: Self = 0;
     #[inline(always)]
     fn to_i64(self) -> i64 {
         self as i64
@@ -53,7 +50,6 @@ impl DoubleWord for i32 {
 impl DoubleWord for i64 {
     const BITS: u32 = 64;
     const ONE: Self = 1;
-    const ZERO: Self = 0;
     #[inline(always)]
     fn to_i64(self) -> i64 {
         self
@@ -63,25 +59,23 @@ impl DoubleWord for i64 {
 /// A signed integer of [`Word::BITS`] bits: what states and immittances are made of.
 ///
 /// Firmware uses `i16` and `i32`; [`Bits`] gives every other length, so that the desktop can size.
-/// The trait is sealed by its results being part of the number contract: implementing it for
-/// another type is possible, but only the three kinds given here are tested.
+/// Implementing the trait for another type is possible, but only these three are tested.
 pub trait Word: Copy + Eq + Ord + Debug + Default + Send + Sync + 'static {
     /// Word length W in bits, sign included.
     const BITS: u32;
-    /// State words w obey −2^(W−2) ≤ w < 2^(W−2): one bit of headroom beside the sign.
+    /// 2^(W−2): state words w obey −LIMIT ≤ w < LIMIT, those of immittances |w| < LIMIT; one bit of
+    /// headroom beside the sign.
     const LIMIT: i32 = 1 << (Self::BITS - 2);
-    /// Largest mantissa of an immittance: 2^(W−1) − 1.
-    const MANTISSA_MAX: i32 = ((1_i64 << (Self::BITS - 1)) - 1) as i32;
 
     /// The type that holds exact sums of products.
     type Double: DoubleWord;
 
     /// Exact product.
     fn times(self, other: Self) -> Self::Double;
-    /// The same value as a double word.
-    fn widen(self) -> Self::Double;
-    /// The low word of a double word; the caller ensures that the value fits W bits.
-    fn narrow(wide: Self::Double) -> Self;
+    /// This word times 2^(W − down), 1 ≤ down < W.
+    fn raised(self, down: u32) -> Self::Double;
+    /// floor(sum · 2^up / 2^W), 0 ≤ up < W; the caller ensures that it fits 32 bits.
+    fn upper(sum: Self::Double, up: u32) -> i32;
     /// The word as `i32`.
     fn to_i32(self) -> i32;
     /// The word with this value; the caller ensures that it fits W bits.
@@ -96,13 +90,12 @@ impl Word for i16 {
         self as i32 * other as i32
     }
     #[inline(always)]
-    fn widen(self) -> i32 {
-        self as i32
+    fn raised(self, down: u32) -> i32 {
+        (self as i32) << (16 - down)
     }
     #[inline(always)]
-    fn narrow(wide: i32) -> Self {
-        debug_assert!(i16::try_from(wide).is_ok());
-        wide as i16
+    fn upper(sum: i32, up: u32) -> i32 {
+        sum >> (16 - up)
     }
     #[inline(always)]
     fn to_i32(self) -> i32 {
@@ -110,7 +103,8 @@ impl Word for i16 {
     }
     #[inline(always)]
     fn from_i32(value: i32) -> Self {
-        Self::narrow(value)
+        debug_assert!(i16::try_from(value).is_ok());
+        value as i16
     }
 }
 
@@ -119,16 +113,19 @@ impl Word for i32 {
     type Double = i64;
     #[inline(always)]
     fn times(self, other: Self) -> i64 {
-        product::signed(self, other)
+        product::within_limit(self, other)
     }
     #[inline(always)]
-    fn widen(self) -> i64 {
-        self as i64
+    fn raised(self, down: u32) -> i64 {
+        product::join((self >> down) as u32, (self as u32) << (32 - down)) as i64
     }
     #[inline(always)]
-    fn narrow(wide: i64) -> Self {
-        debug_assert!(i32::try_from(wide).is_ok());
-        wide as i32
+    fn upper(sum: i64, up: u32) -> i32 {
+        let upper = (sum >> 32) as u32;
+        if up == 0 {
+            return upper as i32;
+        }
+        (upper << up | sum as u32 >> (32 - up)) as i32
     }
     #[inline(always)]
     fn to_i32(self) -> i32 {
@@ -154,16 +151,15 @@ impl<const W: u32> Word for Bits<W> {
     type Double = i64;
     #[inline(always)]
     fn times(self, other: Self) -> i64 {
-        product::signed(self.0, other.0)
+        self.0 as i64 * other.0 as i64
     }
     #[inline(always)]
-    fn widen(self) -> i64 {
-        self.0 as i64
+    fn raised(self, down: u32) -> i64 {
+        (self.0 as i64) << (W - down)
     }
     #[inline(always)]
-    fn narrow(wide: i64) -> Self {
-        debug_assert!(wide >> (W - 1) == 0 || wide >> (W - 1) == -1);
-        Self(wide as i32)
+    fn upper(sum: i64, up: u32) -> i32 {
+        (sum >> (W - up)) as i32
     }
     #[inline(always)]
     fn to_i32(self) -> i32 {
@@ -171,7 +167,8 @@ impl<const W: u32> Word for Bits<W> {
     }
     #[inline(always)]
     fn from_i32(value: i32) -> Self {
-        Self::narrow(value as i64)
+        debug_assert!(value >> (W - 1) == 0 || value >> (W - 1) == -1);
+        Self(value)
     }
 }
 
