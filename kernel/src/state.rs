@@ -22,16 +22,22 @@ impl<W: Word> State<W> {
     /// to 2^(2−W) of the block or better.
     #[inline]
     pub fn from_load(load: Gamma) -> Self {
-        let one = 1_i64 << Gamma::FRACTION_BITS;
-        let (re, im) = (load.re as i64, load.im as i64);
-        let words = [one + re, im, one - re, -im];
+        // −2 has no negative
+        let re = load.re.max(-i32::MAX);
+        let im = load.im.max(-i32::MAX);
+        let words = |right: u32| {
+            let one = 1 << (Gamma::FRACTION_BITS - right);
+            let [re, im, minus_re, minus_im] =
+                [re, im, -re, -im].map(|part| (part >> right) + (part >> (right - 1) & 1));
+            [one + re, im, one + minus_re, minus_im]
+        };
         let mut right = 33 - W::BITS;
-        let largest = words.into_iter().fold(0, |top, word| top.max(word.abs()));
-        if round_shift(largest, right) >= W::LIMIT as i64 {
+        let mut state = words(right);
+        if state.into_iter().fold(0, |top, word| top | magnitude(word)) >= W::LIMIT {
             right += 1;
+            state = words(right);
         }
-        let [v_re, v_im, i_re, i_im] =
-            words.map(|word| W::from_i32(round_shift(word, right) as i32));
+        let [v_re, v_im, i_re, i_im] = state.map(W::from_i32);
         Self {
             v: [v_re, v_im],
             i: [i_re, i_im],
@@ -115,18 +121,28 @@ fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) ->
         return 1;
     }
     let exponent = exponent as u32;
+    let upper = product.map(|part| W::upper(part, 0));
+    let top = [0, 1].map(|part| (word[part] >> exponent) + upper[part]);
+    let room = W::BITS - 2 - exponent;
+    if (magnitude(top[0]) | magnitude(top[1])) + 2 < 1 << room {
+        // twice the word is a whole number at one bit below its last place; the sum fits 32 bits
+        // even where the product alone does not
+        *target = [0, 1].map(|part| {
+            let low = W::upper(product[part], exponent + 1);
+            W::from_i32(round_half((word[part] << 1).wrapping_add(low)))
+        });
+        return 0;
+    }
     let sum = [0, 1].map(|part| target[part].raised(exponent) + product[part]);
-    let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
     // bits from the sum's top to one below the word's last place
-    let mut up = exponent + 1;
+    let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
+    let mut up = exponent;
     while up > 1 && (top + 1) >> (W::BITS - 1 - up) != 0 {
         up -= 1;
     }
     *target = sum.map(|sum| W::from_i32(round_half(W::upper(sum, up))));
     let grown = exponent + 1 - up;
-    if grown > 0 {
-        *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
-    }
+    *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
     grown
 }
 
@@ -142,15 +158,21 @@ fn times<W: Word>(z: &Immittance<W>, word: &[W; 2]) -> [W::Double; 2] {
     let [re, im] = *word;
     let zero = W::default();
     if z.re == zero {
-        [-z.im.times(im), z.im.times(re)]
+        [minus(z.im).times(im), z.im.times(re)]
     } else if z.im == zero {
         [z.re.times(re), z.re.times(im)]
     } else {
         [
-            z.re.times(re) - z.im.times(im),
+            z.re.times(re) + minus(z.im).times(im),
             z.re.times(im) + z.im.times(re),
         ]
     }
+}
+
+/// The word with the other sign; the words of an immittance have one.
+#[inline(always)]
+fn minus<W: Word>(word: W) -> W {
+    W::from_i32(-word.to_i32())
 }
 
 /// x for x ≥ 0, −1 − x below: the bits that the integer takes beside its sign.
