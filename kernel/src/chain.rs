@@ -28,6 +28,11 @@ impl<R: Copy, const N: usize> Chain<R, N> {
         Ok(Self { stages })
     }
 
+    /// Appends a stage at the load.
+    pub(crate) fn push(&mut self, stage: Stage<R>) -> Result<(), TooManyStages> {
+        self.stages.push(stage).map_err(|_| TooManyStages)
+    }
+
     /// The same chain with every constant converted.
     pub fn map<S: Copy>(&self, mut convert: impl FnMut(R) -> S) -> Chain<S, N> {
         let mut stages = Vec::new();

@@ -36,6 +36,7 @@ mod chain;
 mod float;
 mod frequency;
 mod hyperbolic;
+pub mod image;
 mod immittance;
 mod product;
 mod readout;
