@@ -1,0 +1,1 @@
+//! Proofs at link time.
