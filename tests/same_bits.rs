@@ -1,7 +1,6 @@
 //! A core computes the very bits of the desktop: images are decoded, resolved, walked and read on
 //! every emulated core, and every word is compared with what the same kernel gives here.
 
-use std::collections::{BTreeSet, HashSet};
 use std::io::Write;
 
 #[path = "same_bits/cases.rs"]
@@ -13,6 +12,8 @@ mod cases;
     reason = "public in the images, where it is a library's"
 )]
 mod checksum;
+#[path = "same_bits/coverage.rs"]
+mod coverage;
 #[path = "common/emulator.rs"]
 mod emulator;
 #[path = "same_bits/listing.rs"]
@@ -33,10 +34,7 @@ mod words;
 use cases::{Image, WORD_BITS, cases, file, images};
 use emulator::{CORES, Core, Failure, Output};
 use listing::{Difference, Extent, Line, compare, listing};
-use stagebits::arithmetic::{Block, Double, to_complex};
-use stagebits_kernel::{
-    Gamma, Immittance, Position, Scalar, Stage, State, StubFunction, Transformer,
-};
+use stagebits_kernel::{Gamma, Scalar};
 use words::Subject;
 
 const _: () = assert!(words::CAPACITY == stagebits::constants::CAPACITY);
@@ -77,6 +75,143 @@ fn cores_compute_the_words_of_the_desktop() -> Result<(), Failure> {
         assert!(points >= POINTS, "{}: {points} points", core.name);
         let at_points = Subject::Point(Gamma::MATCHED).names().len() * points;
         assert!(words > at_points, "{}: {words} words", core.name);
+    }
+    Ok(())
+}
+
+/// What the core would print, had it computed as the desktop.
+fn print(lines: &[Line]) -> String {
+    let mut text = String::new();
+    for line in lines {
+        let words: Vec<_> = line
+            .words
+            .iter()
+            .map(|word| format!("{word:08x}"))
+            .collect();
+        text += &words.join(" ");
+        text += "\n";
+    }
+    text
+}
+
+#[test]
+fn comparison_finds_one_bit_and_names_its_place() {
+    let desktop = listing(&images(&cases()));
+    let mut printed: Vec<_> = print(&desktop).lines().map(str::to_owned).collect();
+    let extent = compare(&desktop, &printed.join("\n")).unwrap_or_else(|it| panic!("{it}"));
+    assert!(extent.points >= POINTS);
+    let words: usize = desktop.iter().map(|line| line.words.len()).sum();
+    assert_eq!(extent.words, words);
+
+    let last = desktop.len() - 1;
+    for (index, word, bit) in [
+        (0, 0, 31),
+        (1, 2, 0),
+        (last / 2, 3, 7),
+        (last, 17, 0),
+        (last, 0, 30),
+    ] {
+        let Line { place, words } = &desktop[index];
+        let word = word % words.len();
+        let (here, there) = (words[word], words[word] ^ 1 << bit);
+        let digits = 9 * word..9 * word + 8;
+        printed[index].replace_range(digits.clone(), &format!("{there:08x}"));
+        let found = compare(&desktop, &printed.join("\n")).expect_err("a bit differs");
+        let expected = Difference::Word {
+            place: place.clone(),
+            name: place.subject.names()[word],
+            here,
+            there,
+        };
+        assert_eq!(*found, expected);
+        printed[index].replace_range(digits, &format!("{here:08x}"));
+    }
+}
+
+#[test]
+fn comparison_finds_lines_too_many_too_few_and_garbled() {
+    let cases = cases();
+    let desktop = listing(&[cases[0].image(32, |constant| constant)]);
+    let whole = print(&desktop);
+    let fails = |printed: &str| *compare(&desktop, printed).expect_err("the text differs");
+    let place = |index: usize| desktop[index].place.clone();
+
+    let end = whole.trim_end().rfind('\n').expect("many lines");
+    let found = None;
+    let place_of_last = place(desktop.len() - 1);
+    assert_eq!(
+        fails(&whole[..end]),
+        Difference::Line {
+            place: place_of_last,
+            found
+        }
+    );
+    let (first, rest) = whole.split_once('\n').expect("many lines");
+    for garbled in [&first[9..], &format!("{first} 00000000"), "", "0000000g"] {
+        let found = Some(garbled.to_owned());
+        assert_eq!(
+            fails(&format!("{garbled}\n{rest}")),
+            Difference::Line {
+                place: place(0),
+                found
+            }
+        );
+    }
+    assert_eq!(
+        fails(&format!("{whole}{first}\n")),
+        Difference::Surplus(first.to_owned())
+    );
+}
+
+/// One bit in the last place of one constant shows, at its chain and nowhere before.
+#[test]
+fn constant_of_another_last_bit_is_found_on_the_core() -> Result<(), Failure> {
+    let core = emulator::core("armv6m");
+    let cases = cases();
+    for word_bits in WORD_BITS {
+        let mut images: Vec<_> = cases[..3]
+            .iter()
+            .map(|case| case.image(word_bits, |constant| constant))
+            .collect();
+        let desktop = listing(&images);
+        let mut first = true;
+        images[1] = cases[1].image(word_bits, |constant| {
+            if constant.is_zero() || !std::mem::take(&mut first) {
+                return constant;
+            }
+            let mantissa = constant.mantissa() ^ 1 << (32 - word_bits);
+            Scalar::from_parts(mantissa, constant.exponent()).expect("normalised as before")
+        });
+        let printed = printed(core, &images)?;
+        let found = compare(&desktop, &printed).expect_err("a constant differs");
+        let Difference::Word { place, .. } = *found else {
+            panic!("{found}");
+        };
+        let expected = (&cases[1].name, word_bits, Subject::Step(0));
+        assert_eq!((&place.chain, place.word_bits, place.subject), expected);
+        // The core computes what the desktop makes of the same constant.
+        compare(&listing(&images), &printed).unwrap_or_else(|it| panic!("{it}"));
+    }
+    Ok(())
+}
+
+#[test]
+fn damaged_image_is_refused_on_the_core() -> Result<(), Failure> {
+    let core = emulator::core("armv6m");
+    let image = cases()[0].image(16, |constant| constant);
+    let whole = file(std::slice::from_ref(&image));
+    let mut damaged = whole.clone();
+    let last = damaged.len() - 1;
+    damaged[last] ^= 1;
+    let mut tail = whole.clone();
+    tail.extend([0; 3]);
+    for (bytes, reason) in [
+        (&damaged[..], "an image is refused"),
+        (&whole[..last], "the file ends within an image"),
+        (&tail[..], "the file ends before an image"),
+    ] {
+        let Output { stdout, status } = run(core, bytes)?;
+        assert_eq!((stdout.lines().last(), status), (Some(reason), 1));
     }
     Ok(())
 }

@@ -144,7 +144,13 @@ pub(crate) fn compare(desktop: &[Line], printed: &str) -> Result<Extent, Box<Dif
         for ((&here, there), name) in words.iter().zip(there).zip(place.subject.names()) {
             if here != there {
                 let place = place.clone();
-                return Err(Difference::Word { place, name, here, there }.into());
+                return Err(Difference::Word {
+                    place,
+                    name,
+                    here,
+                    there,
+                }
+                .into());
             }
         }
         extent.points += usize::from(matches!(place.subject, Subject::Point(_)));
@@ -158,5 +164,7 @@ pub(crate) fn compare(desktop: &[Line], printed: &str) -> Result<Extent, Box<Dif
 
 /// Words in hexadecimal, or `None` if the line is anything else.
 fn parse(line: &str) -> Option<Vec<u32>> {
-    line.split(' ').map(|word| u32::from_str_radix(word, 16).ok()).collect()
+    line.split(' ')
+        .map(|word| u32::from_str_radix(word, 16).ok())
+        .collect()
 }

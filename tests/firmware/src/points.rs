@@ -80,5 +80,7 @@ pub fn loads(hertz: u32) -> impl Iterator<Item = Gamma> {
         let right = u32::from(index < PASSIVE_LOADS);
         load((word >> 32) as i32 >> right, word as i32 >> right)
     });
-    EDGE_LOADS.into_iter().chain(random.take(PASSIVE_LOADS + ANY_LOADS))
+    EDGE_LOADS
+        .into_iter()
+        .chain(random.take(PASSIVE_LOADS + ANY_LOADS))
 }
