@@ -42,9 +42,12 @@ const _: () = assert!(words::CAPACITY == stagebits::constants::CAPACITY);
 /// Fewest points that each core is compared at.
 const POINTS: usize = 10_000;
 
-/// Runs `words` on `core` with these bytes as its file.
-fn run(core: &Core, bytes: &[u8]) -> Result<Output, Failure> {
-    let elf = emulator::build(core, "words", &[], &[])?;
+/// Arguments of cargo for each profile that firmware is built with.
+const PROFILES: [&[&str]; 2] = [&["--profile", "release"], &["--profile", "small"]];
+
+/// Runs `words`, built with this profile for `core`, with these bytes as its file.
+fn run(core: &Core, profile: &[&str], bytes: &[u8]) -> Result<Output, Failure> {
+    let elf = emulator::build(core, "words", &[], profile)?;
     let mut images = tempfile::NamedTempFile::new().expect("a temporary file");
     images.write_all(bytes).expect("room for the images");
     let path = images.path().to_str().expect("a path in UTF-8");
@@ -52,8 +55,8 @@ fn run(core: &Core, bytes: &[u8]) -> Result<Output, Failure> {
 }
 
 /// What `words` prints on `core` for these images, having ended well.
-fn printed(core: &Core, images: &[Image]) -> Result<String, Failure> {
-    let Output { stdout, status } = run(core, &file(images))?;
+fn printed(core: &Core, profile: &[&str], images: &[Image]) -> Result<String, Failure> {
+    let Output { stdout, status } = run(core, profile, &file(images))?;
     let last = stdout.lines().last().unwrap_or_default();
     assert_eq!(status, 0, "{}: {last}", core.name);
     Ok(stdout)
@@ -63,18 +66,18 @@ fn printed(core: &Core, images: &[Image]) -> Result<String, Failure> {
 fn cores_compute_the_words_of_the_desktop() -> Result<(), Failure> {
     let images = images(&cases());
     let desktop = listing(&images);
-    for core in &CORES {
-        let printed = printed(core, &images)?;
+    let at_points = Subject::Point(Gamma::MATCHED).names().len();
+    for (core, profile) in CORES.iter().flat_map(|core| PROFILES.map(|it| (core, it))) {
+        let what = format!("{}, {}", core.name, profile[1]);
+        let printed = printed(core, profile, &images)?;
         let Extent { points, words } =
-            compare(&desktop, &printed).unwrap_or_else(|it| panic!("{}: {it}", core.name));
+            compare(&desktop, &printed).unwrap_or_else(|it| panic!("{what}: {it}"));
         println!(
-            "{}: {points} points of {} images, {words} words: all as on the desktop",
-            core.name,
+            "{what}: {points} points of {} images, {words} words: all as on the desktop",
             images.len()
         );
-        assert!(points >= POINTS, "{}: {points} points", core.name);
-        let at_points = Subject::Point(Gamma::MATCHED).names().len() * points;
-        assert!(words > at_points, "{}: {words} words", core.name);
+        assert!(points >= POINTS, "{what}: {points} points");
+        assert!(words > points * at_points, "{what}: {words} words");
     }
     Ok(())
 }
@@ -182,7 +185,7 @@ fn constant_of_another_last_bit_is_found_on_the_core() -> Result<(), Failure> {
             let mantissa = constant.mantissa() ^ 1 << (32 - word_bits);
             Scalar::from_parts(mantissa, constant.exponent()).expect("normalised as before")
         });
-        let printed = printed(core, &images)?;
+        let printed = printed(core, PROFILES[0], &images)?;
         let found = compare(&desktop, &printed).expect_err("a constant differs");
         let Difference::Word { place, .. } = *found else {
             panic!("{found}");
@@ -210,7 +213,7 @@ fn damaged_image_is_refused_on_the_core() -> Result<(), Failure> {
         (&whole[..last], "the file ends within an image"),
         (&tail[..], "the file ends before an image"),
     ] {
-        let Output { stdout, status } = run(core, bytes)?;
+        let Output { stdout, status } = run(core, PROFILES[0], bytes)?;
         assert_eq!((stdout.lines().last(), status), (Some(reason), 1));
     }
     Ok(())
