@@ -43,6 +43,8 @@ mod real;
 mod scalar;
 mod stage;
 mod state;
+#[cfg(test)]
+mod testing;
 mod walk;
 mod word;
 
