@@ -2,10 +2,13 @@
 //!
 //! Stated errors are those of the readout itself, for the words of the state as they are.
 
+mod decibels;
 mod gamma;
 mod impedance;
+mod loss;
 mod swr;
 
+pub use decibels::Decibels;
 pub use gamma::Gamma;
 pub use swr::Swr;
 
