@@ -6,10 +6,12 @@ mod decibels;
 mod gamma;
 mod impedance;
 mod loss;
+mod matrix;
 mod swr;
 
 pub use decibels::Decibels;
 pub use gamma::Gamma;
+pub use matrix::ChainMatrix;
 pub use swr::Swr;
 
 use crate::real::Complex;

@@ -1,4 +1,6 @@
-//! What tests share: scalars as `f64` and back, and states of any words.
+//! What tests share: scalars as `f64` and back, states of any words, circuits.
+
+pub(crate) mod circuit;
 
 use crate::scalar::Scalar;
 use crate::state::State;
@@ -7,6 +9,15 @@ use crate::word::Word;
 /// A scalar's value; exact.
 pub(crate) fn value(s: Scalar) -> f64 {
     f64::from(s.mantissa()) * 2.0_f64.powi(s.exponent())
+}
+
+/// The scalar nearest to a number.
+pub(crate) fn scalar(value: f64) -> Scalar {
+    if value == 0.0 {
+        return Scalar::ZERO;
+    }
+    let exponent = value.abs().log2().floor() as i32 - 40;
+    Scalar::from_i64((value * 2.0_f64.powi(-exponent)).round() as i64, exponent)
 }
 
 /// A state whose words are the upper bits of these.
