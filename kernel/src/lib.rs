@@ -54,7 +54,7 @@ pub use chain::{Chain, Resolved, TooManyStages};
 pub use float::FloatState;
 pub use frequency::Frequency;
 pub use immittance::Immittance;
-pub use readout::{ChainMatrix, Decibels, Gamma, Moments, Swr};
+pub use readout::{ChainMatrix, Decibels, Drive, Gamma, Moments, Scattering, Swr};
 pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{

@@ -7,11 +7,16 @@ mod gamma;
 mod impedance;
 mod loss;
 mod matrix;
+mod power;
+mod scattering;
+mod stress;
 mod swr;
 
 pub use decibels::Decibels;
 pub use gamma::Gamma;
 pub use matrix::ChainMatrix;
+pub use scattering::Scattering;
+pub use stress::Drive;
 pub use swr::Swr;
 
 use crate::real::Complex;
@@ -172,6 +177,8 @@ mod tests {
             assert_eq!(value(moments.impedance().re), f64::from(sign));
             assert_eq!(value(moments.admittance().re), f64::from(sign));
             assert_eq!(moments.gamma_square(), gamma.re as u32);
+            let loss = if sign > 0 { 0 } else { Decibels::MAX.bits() };
+            assert_eq!(moments.mismatch_loss().bits(), loss);
         }
     }
 }

@@ -238,7 +238,8 @@ impl Circuit {
 
     /// The states at every node, the load's first, for a walk in words of type `W`.
     ///
-    /// A block's largest word is at least 2^(W−4) when the block has just grown, so that one
+    /// The load's four words are right to half a unit of at most 2^(4−W), with a norm of 2 where it
+    /// is that large and √2 below. A block's largest word is at least 2^(W−4) when the block has just grown, so that one
     /// rounding of v and i moves the state by at most 2^(4−W) of the largest that it has been. The
     /// immittance's own two words are right to 2^(2−W) of what it adds, and to 2^-28 for the
     /// constants, the frequency and the line functions.
@@ -269,7 +270,7 @@ fn nodes<W: Word>(parts: impl Iterator<Item = (Part, Matrix)>, load: Pair) -> Ve
     let word = 2.0_f64.powi(-(W::BITS as i32));
     let mut node = Node {
         pair: load,
-        error: 4.0 * word * norm(load),
+        error: 8.0 * word * norm(load),
     };
     let mut largest = norm(load);
     let mut nodes = vec![node];
