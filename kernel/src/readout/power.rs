@@ -6,6 +6,7 @@ use crate::immittance::Immittance;
 use crate::real::Real;
 use crate::scalar::Scalar;
 use crate::state::State;
+use crate::walk::Walk;
 use crate::word::Word;
 
 /// The word of caution that every readout of voltage, current or power carries.
@@ -73,8 +74,9 @@ impl<W: Word, const N: usize> Resolved<Immittance<W>, N> {
     #[doc = caution!()]
     #[inline]
     pub fn efficiencies(&self, load: State<W>) -> impl Iterator<Item = Scalar> {
-        let mut nearer_load = load.moments();
-        self.nodes(load).skip(1).map(move |state| {
+        let (mut state, mut nearer_load) = (load, load.moments());
+        self.steps().iter().rev().map(move |step| {
+            state.pass(step);
             let here = state.moments();
             let efficiency = here.efficiency(&nearer_load);
             nearer_load = here;

@@ -12,6 +12,16 @@ use crate::scalar::Scalar;
 /// √(8·P·R0) / |v + i| volts per unit of v, and over R0 amperes per unit of i. The peak is that of
 /// the carrier's sine; with modulation, P is the peak envelope power.
 ///
+/// ```
+/// use stagebits_kernel::{Drive, Gamma, State};
+///
+/// // 100 W into 50 ohm: 100 V and 2 A
+/// let matched = State::<i32>::from_load(Gamma::MATCHED).moments();
+/// let drive = Drive::new(&matched, 100_000, 50_000);
+/// assert_eq!(drive.millivolts(&matched), 100_000);
+/// assert_eq!(drive.microamperes(&matched), 2_000_000);
+/// ```
+///
 #[doc = caution!()]
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
 pub struct Drive {
