@@ -68,7 +68,7 @@ pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
 fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
     let plan = read(&request.common)?;
     let load = match &request.load {
-        Some(text) => load(text, &plan)?,
+        Some(text) => load(text)?,
         None => match &plan.loads {
             Loads::Impedances(list) => Complex::new(list[0].0, list[0].1),
             Loads::SwrUpTo(_) => Complex::new(plan.reference, 0.0),
@@ -117,8 +117,8 @@ fn read(common: &Common) -> Result<Plan, Failure> {
     Ok(plan)
 }
 
-/// A load written as 'R, X' in ohms.
-fn load(text: &str, plan: &Plan) -> Result<Complex<f64>, Failure> {
+/// A load written as 'R, X', within the limits of the chain file's loads.
+fn load(text: &str) -> Result<Complex<f64>, Failure> {
     let usage = |what: &str| {
         Failure::Usage(format!(
             "--load '{text}': {what}; write resistance and reactance, such as '36 ohm, -120 ohm'"
@@ -131,12 +131,13 @@ fn load(text: &str, plan: &Plan) -> Result<Complex<f64>, Failure> {
         quantity::parse(part.trim(), Dimension::Resistance).map_err(|error| usage(&error.message))
     };
     let load = Complex::new(ohms(r)?, ohms(x)?);
-    let largest = *Dimension::Resistance.limits().end();
     if load.re < 0.0 {
         return Err(usage("a passive load has no negative resistance"));
     }
-    if load.norm() > largest * plan.reference.max(1.0) {
-        return Err(usage("this is beyond every load"));
+    let most = *Dimension::Resistance.limits().end();
+    if load.re.max(load.im.abs()) > most {
+        let most = Dimension::Resistance.write(most);
+        return Err(usage(&format!("the limit of either is {most}")));
     }
     Ok(load)
 }
