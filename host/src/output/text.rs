@@ -21,7 +21,7 @@ const NAME_WIDTH: usize = 30;
 pub fn response(plan: &Plan, response: &Response) -> String {
     let load = impedance_from_gamma(response.load, plan.reference);
     let mut text = format!(
-        "{}\nload {}, reference {}; |ΔΓ|: words of {} bits against f64\n\n",
+        "{}\nload {}, reference {}\n|ΔΓ|: words of {} bits against f64\n\n",
         shortened(&plan.title, WIDTH),
         ohms(load),
         engineering(plan.reference, "ohm", 4),
@@ -182,7 +182,7 @@ fn times(ratio: f64) -> String {
     if ratio < 100.0 {
         format!("{ratio:.1}")
     } else {
-        grouped(ratio.min(1e18) as u64)
+        grouped(ratio.min(1e18).round() as u64)
     }
 }
 
