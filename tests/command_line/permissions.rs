@@ -166,3 +166,18 @@ fn write_protected_chain_file_is_read() {
     let kept = fs::read_to_string(folder.path().join("chain.toml"));
     assert_eq!(kept.expect("the chain file"), CHAIN);
 }
+
+/// By a user who may not replace devices: were it ever tried, the test must not harm the system.
+#[cfg(target_os = "linux")]
+#[test]
+fn output_file_on_a_full_device() {
+    let folder = folder();
+    set_mode(folder.path(), 0o755);
+    set_mode(&folder.path().join("chain.toml"), 0o644);
+    let arguments = ["respond", "chain.toml", "--output", "/dev/full"];
+    if let Some(run) = run_bound(folder.path(), &arguments) {
+        assert_eq!((run.status, run.stdout.as_str()), (3, ""), "{run:?}");
+        let expected = "error: cannot write /dev/full: No space left on device (os error 28)\n";
+        assert_eq!(run.stderr, expected);
+    }
+}
