@@ -6,6 +6,8 @@ pub mod comparison;
 pub mod constants;
 pub mod diagnostic;
 pub mod envelope;
+mod input;
 pub mod plan;
 pub mod quantity;
 pub mod reference;
+pub mod touchstone;

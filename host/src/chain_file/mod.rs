@@ -39,11 +39,10 @@ mod syntax;
 mod table;
 mod value;
 
-use std::fs::File;
-use std::io::Read as _;
 use std::path::Path;
 
 use crate::diagnostic::{Diagnostic, Source};
+use crate::input;
 use crate::plan::Plan;
 
 /// Largest chain file in bytes: hundreds of times a full one, and an end to reading a device.
@@ -56,25 +55,7 @@ pub const LARGEST_FILE: u64 = 1 << 20;
 /// chain file.
 pub fn read(path: &Path) -> Result<Plan, Diagnostic> {
     let file = path.display().to_string();
-    let mut bytes = Vec::new();
-    let read =
-        File::open(path).and_then(|opened| opened.take(LARGEST_FILE + 1).read_to_end(&mut bytes));
-    if let Err(error) = read {
-        let message = format!("cannot read the chain file: {error}");
-        return Err(Diagnostic::of_file(
-            &file,
-            message,
-            "give the path of a readable chain file",
-        ));
-    }
-    if bytes.len() as u64 > LARGEST_FILE {
-        let message = format!("the file is larger than {LARGEST_FILE} bytes");
-        return Err(Diagnostic::of_file(
-            &file,
-            message,
-            "give a chain file in TOML",
-        ));
-    }
+    let bytes = input::read(path, LARGEST_FILE, "chain file")?;
     match std::str::from_utf8(&bytes) {
         Ok(text) => parse(text, &file),
         Err(error) => {
