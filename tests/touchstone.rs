@@ -1,11 +1,15 @@
-//! Touchstone files: what is read, what is refused and where.
+//! Touchstone files: what is read, what is refused and where, and measured loads of a chain.
 
 #[path = "touchstone/data_faults.rs"]
 mod data_faults;
 #[path = "touchstone/files.rs"]
 mod files;
+#[path = "touchstone/frequency_loads.rs"]
+mod frequency_loads;
 #[path = "touchstone/keyword_faults.rs"]
 mod keyword_faults;
+#[path = "touchstone/load_faults.rs"]
+mod load_faults;
 #[path = "touchstone/one_ports.rs"]
 mod one_ports;
 #[path = "touchstone/properties.rs"]
