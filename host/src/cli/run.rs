@@ -67,16 +67,15 @@ pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
 
 fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
     let plan = read(&request.common)?;
-    let load = match &request.load {
-        Some(text) => load(text)?,
-        None => match &plan.loads {
-            Loads::Impedances(list) => Complex::new(list[0].0, list[0].1),
-            Loads::SwrUpTo(_) => Complex::new(plan.reference, 0.0),
-        },
-    };
+    let given = request.load.as_deref().map(load).transpose()?;
+    let one_load = given.or(match &plan.loads {
+        Loads::Impedances(list) => Some(Complex::new(list[0].0, list[0].1)),
+        Loads::SwrUpTo(_) => Some(Complex::new(plan.reference, 0.0)),
+        Loads::Measured(_) | Loads::SeriesModel(_) => None,
+    });
     let destination = destination(&request.common)?;
     let exact = constants::exact(&plan);
-    let gamma = reference::gamma_from_impedance(load, plan.reference);
+    let gamma = one_load.map(|load| reference::gamma_from_impedance(load, plan.reference));
     let response = with_word!(plan.firmware.word_bits, respond(&plan, &exact, gamma));
     let rendering = if request.common.json {
         json::response(&plan, &response)

@@ -24,6 +24,7 @@ pub fn response(plan: &Plan, response: &Response) -> String {
             let losses: Vec<_> = point.stage_losses.iter().map(passive).collect();
             json!({
                 "hertz": point.hertz,
+                "load_gamma": complex(point.load),
                 "gamma": complex(point.gamma),
                 "impedance_ohm": complex(point.impedance),
                 "swr": finite(point.swr),
@@ -42,7 +43,6 @@ pub fn response(plan: &Plan, response: &Response) -> String {
         "title": plan.title,
         "reference_ohm": plan.reference,
         "word_bits": response.word_bits,
-        "load_gamma": complex(response.load),
         "stages": plan.stages.iter().map(|stage| &stage.name).collect::<Vec<_>>(),
         "points": points,
     }))

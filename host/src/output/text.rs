@@ -19,11 +19,14 @@ const NAME_WIDTH: usize = 30;
 
 /// The response as a table over frequency.
 pub fn response(plan: &Plan, response: &Response) -> String {
-    let load = impedance_from_gamma(response.load, plan.reference);
+    let load = response.load.map_or(
+        "from the chain file, one per frequency".to_owned(),
+        |load| ohms(impedance_from_gamma(load, plan.reference)),
+    );
     let mut text = format!(
         "{}\nload {}, reference {}\n|ΔΓ|: words of {} bits against f64\n\n",
         shortened(&plan.title, WIDTH),
-        ohms(load),
+        load,
         engineering(plan.reference, "ohm", 4),
         response.word_bits,
     );
