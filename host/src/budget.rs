@@ -25,7 +25,7 @@ pub struct Spread {
 
 impl Spread {
     fn take(&mut self, error: Complex<f64>) {
-        self.worst = self.worst.max(error.norm());
+        self.worst = self.worst.max(magnitude(error));
         self.squares += error.norm_sqr();
         self.count += 1;
     }
@@ -39,6 +39,15 @@ impl Spread {
     /// Root mean square; zero of nothing.
     pub fn rms(&self) -> f64 {
         (self.squares / self.count.max(1) as f64).sqrt()
+    }
+}
+
+/// |z|; infinite where it is not a number, so that a comparison that failed is the worst of all.
+fn magnitude(z: Complex<f64>) -> f64 {
+    if z.is_finite() {
+        z.norm()
+    } else {
+        f64::INFINITY
     }
 }
 
@@ -70,11 +79,11 @@ pub struct Budget {
     pub total: Contribution,
     /// Rounding the load.
     pub load: Contribution,
-    /// Per stage, radio side first, by [`StageSource::ALL`].
+    /// Per stage, radio side first, by [`crate::comparison::StageSource::ALL`].
     pub stages: Vec<[Contribution; 4]>,
     /// Per stage, its sources added up point by point.
     pub by_stage: Vec<Contribution>,
-    /// By [`StageSource::ALL`], the stages added up point by point.
+    /// By [`crate::comparison::StageSource::ALL`], the stages added up point by point.
     pub by_source: [Contribution; 4],
     /// Reading Γ.
     pub readout: Contribution,
@@ -85,7 +94,7 @@ pub struct Budget {
 impl Budget {
     /// Largest |ΔΓ| found.
     pub fn worst_error(&self) -> f64 {
-        self.total.at_worst.norm()
+        magnitude(self.total.at_worst)
     }
 
     /// Whether the largest |ΔΓ| found is good enough.
@@ -106,7 +115,7 @@ pub fn budget<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort
         },
     );
     let mut evaluations = tally.total.count;
-    let error = |point: Point| comparison.at(point.hertz).error(point.load).norm();
+    let error = |point: Point| magnitude(comparison.at(point.hertz).error(point.load));
     let mut worst = tally.worst[0];
     for (index, (_, start)) in tally.worst.iter().enumerate() {
         let seed = effort.seed.wrapping_add(index as u64);
@@ -179,7 +188,7 @@ impl<W: Word> Survey for BudgetSurvey<'_, W> {
             spread.take(sum);
         }
         // within one frequency only the worst load is kept
-        let error = split.total.norm();
+        let error = magnitude(split.total);
         match kept.worst.first_mut() {
             Some(worst) if worst.0 >= error => {}
             Some(worst) => *worst = (error, point),

@@ -2,7 +2,8 @@
 //!
 //! A run of n points takes about √n frequencies, the band's grid first and seeded random ones
 //! after, and at each of them loads from a fixed pattern and seeded random ones. From the worst
-//! points found, local ascent goes on. Each frequency has a random stream of its own and results
+//! points found, local ascent goes on. Where there is one load for each frequency, all of the points
+//! are frequencies. Each frequency has a random stream of its own and results
 //! are put together in the order of the frequencies, so that the figures depend on the seed and
 //! the number of points alone, not on the number of threads.
 
@@ -31,6 +32,8 @@ enum LoadSet {
     Disc(f64),
     /// These and no others.
     List(Vec<Gamma>),
+    /// One for each frequency: that of these loads, referred to this many ohms.
+    ByFrequency(Loads, f64),
 }
 
 /// How thoroughly to try.
@@ -82,6 +85,9 @@ impl Envelope {
                     })
                     .collect(),
             ),
+            by_frequency @ (Loads::Measured(_) | Loads::SeriesModel(_)) => {
+                LoadSet::ByFrequency(by_frequency.clone(), plan.reference)
+            }
         };
         Self {
             band: plan.band,
@@ -92,7 +98,10 @@ impl Envelope {
     /// Shows every point to the survey.
     pub fn run<S: Survey>(&self, effort: Effort, survey: &S) -> S::Kept {
         let frequencies = self.frequency_count(effort.points);
-        let loads = effort.points.div_ceil(frequencies);
+        let loads = match &self.loads {
+            LoadSet::ByFrequency(..) => 1,
+            _ => effort.points.div_ceil(frequencies),
+        };
         (0..frequencies as usize)
             .into_par_iter()
             .map(|index| {
@@ -103,7 +112,7 @@ impl Envelope {
                 let prepared = survey.prepare(hertz);
                 let mut kept = survey.empty();
                 for load in 0..loads {
-                    let load = self.load(load, loads, &mut random);
+                    let load = self.load(hertz, load, loads, &mut random);
                     survey.take(&prepared, Point { hertz, load }, &mut kept);
                 }
                 kept
@@ -150,7 +159,10 @@ impl Envelope {
     }
 
     fn frequency_count(&self, points: u64) -> u64 {
-        let root = (points as f64).sqrt().ceil() as u64;
+        let root = match &self.loads {
+            LoadSet::ByFrequency(..) => points,
+            _ => (points as f64).sqrt().ceil() as u64,
+        };
         let span = u64::from(self.band.to - self.band.from) + 1;
         root.max(u64::from(self.band.points))
             .min(points)
@@ -168,9 +180,10 @@ impl Envelope {
     }
 
     /// A third of the disc's loads on rings and spokes, a third random on the rim, the rest
-    /// random over the area; the list in turn.
-    fn load(&self, index: u64, count: u64, random: &mut ChaCha8Rng) -> Gamma {
+    /// random over the area; the list in turn; or the only one at this frequency.
+    fn load(&self, hertz: u32, index: u64, count: u64, random: &mut ChaCha8Rng) -> Gamma {
         match &self.loads {
+            LoadSet::ByFrequency(loads, reference) => only_load(loads, *reference, hertz),
             LoadSet::List(list) => list[(index % list.len() as u64) as usize],
             LoadSet::Disc(radius) => {
                 let pattern = count / 3;
@@ -199,12 +212,15 @@ impl Envelope {
         let span = f64::from(self.band.to - self.band.from);
         let mut signed = || 2.0 * unit(random) - 1.0;
         let (turn, along, across) = (signed(), signed(), signed());
-        if turn > 0.0 {
+        if turn > 0.0 || matches!(self.loads, LoadSet::ByFrequency(..)) {
             let moved = f64::from(from.hertz) + (step * span * along).round();
             let band = f64::from(self.band.from)..=f64::from(self.band.to);
             point.hertz = moved.clamp(*band.start(), *band.end()) as u32;
         }
         match &self.loads {
+            LoadSet::ByFrequency(loads, reference) => {
+                point.load = only_load(loads, *reference, point.hertz);
+            }
             LoadSet::Disc(radius) => {
                 let moved = to_complex(from.load) + Complex::new(along, across) * step;
                 let shrink = (radius / moved.norm()).min(1.0);
@@ -219,6 +235,12 @@ impl Envelope {
         }
         point
     }
+}
+
+/// The only load at a frequency of the band.
+fn only_load(loads: &Loads, reference: f64, hertz: u32) -> Gamma {
+    let gamma = reference::load_gamma(loads, reference, f64::from(hertz));
+    to_gamma(gamma.expect("a plan's measured load covers its band"))
 }
 
 fn join<S: Survey>(survey: &S, sum: Option<S::Kept>, kept: S::Kept) -> S::Kept {

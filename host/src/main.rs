@@ -1,5 +1,6 @@
 //! The `stagebits` command.
 
+use std::io::Write;
 use std::process::ExitCode;
 
 use clap::Parser;
@@ -18,6 +19,7 @@ fn main() -> ExitCode {
 }
 
 fn fail(code: u8, message: &str) -> ExitCode {
-    eprintln!("{message}");
+    // nowhere else to say it
+    let _ = writeln!(std::io::stderr(), "{message}");
     ExitCode::from(code)
 }

@@ -4,6 +4,8 @@
 //! the image turns it into firmware words, and the envelope is drawn from its band and loads.
 //! Values here have been checked by [`crate::chain_file`]: finite, in range, of the right dimension.
 
+use crate::touchstone::OnePort;
+
 /// Speed of light in vacuum, m/s (SI definition).
 pub const SPEED_OF_LIGHT: f64 = 299_792_458.0;
 
@@ -64,6 +66,11 @@ pub enum Loads {
     SwrUpTo(f64),
     /// A list of impedances in ohms, (R, X) with R ≥ 0.
     Impedances(Vec<(f64, f64)>),
+    /// One load at each frequency, as measured: referred to [`Plan::reference`], passive, and over
+    /// all of [`Plan::band`].
+    Measured(OnePort),
+    /// One load at each frequency: a branch in [`Arrangement::Series`], from port to ground.
+    SeriesModel(Branch),
 }
 
 /// The arithmetic on the target.

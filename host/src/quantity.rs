@@ -208,6 +208,16 @@ pub fn parse(text: &str, wanted: Dimension) -> Result<f64, QuantityError> {
     }
 }
 
+/// A decimal number times ten to the power `power_of_ten`, rounded once; infinite where that is too
+/// large for `f64`, `None` where `text` is no number ("inf" and "nan" are none).
+pub(crate) fn decimal(text: &str, power_of_ten: i64) -> Option<f64> {
+    let power = power(text)?;
+    if power_of_ten == 0 {
+        return text.parse().ok();
+    }
+    Some(scaled(text, power.saturating_add(power_of_ten)).unwrap_or(f64::INFINITY))
+}
+
 /// The power of ten behind the `e` of a decimal number, 0 without one; `None` if it is no number.
 fn power(number: &str) -> Option<i64> {
     // The standard library reads "inf" and "nan" as well, which are no values of a part.

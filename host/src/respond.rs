@@ -14,8 +14,8 @@ use crate::reference::{self, Matrix, Reference, SParameters};
 pub struct Response {
     /// Word length of the firmware's Γ.
     pub word_bits: u32,
-    /// Load as the firmware takes it in, referred to the reference resistance.
-    pub load: Complex<f64>,
+    /// The load, where it is the same at every frequency.
+    pub load: Option<Complex<f64>>,
     /// One entry per grid frequency.
     pub points: Vec<ResponsePoint>,
 }
@@ -25,6 +25,8 @@ pub struct Response {
 pub struct ResponsePoint {
     /// Frequency in hertz.
     pub hertz: u32,
+    /// Load as the firmware takes it in, referred to the reference resistance.
+    pub load: Complex<f64>,
     /// Γ at the input, referred to the reference resistance.
     pub gamma: Complex<f64>,
     /// Input impedance in ohms.
@@ -47,21 +49,33 @@ pub struct ResponsePoint {
 
 /// Evaluates `plan` over its grid with a load of `load` (Γ), the firmware in words of type `W`.
 ///
-/// The load is rounded to the format in which firmware takes it, and both sides see that.
-pub fn respond<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, load: Complex<f64>) -> Response {
-    let load = to_gamma(load);
+/// Without `load`, the plan's own load at each frequency is taken. Loads are rounded to the format
+/// in which firmware takes them, and both sides see that.
+///
+/// # Panics
+/// If there is no `load` and the plan's loads are a set.
+pub fn respond<W: Word>(
+    plan: &Plan,
+    exact: &Chain<f64, CAPACITY>,
+    load: Option<Complex<f64>>,
+) -> Response {
     let comparison = Comparison::<W>::new(plan, exact);
     let reference = Reference::new(plan);
+    let load = load.map(to_gamma);
     let points = (0..plan.band.points)
         .map(|index| {
             let hertz = plan.band.grid(index);
+            let load = load.unwrap_or_else(|| {
+                let own = reference::load_gamma(&plan.loads, plan.reference, f64::from(hertz));
+                to_gamma(own.expect("one load per frequency, over the whole band"))
+            });
             let word_gamma = comparison.at(hertz).word_gamma(load);
             point(plan, &reference, hertz, load, word_gamma)
         })
         .collect();
     Response {
         word_bits: W::BITS,
-        load: to_complex(load),
+        load: load.map(to_complex),
         points,
     }
 }
@@ -80,6 +94,7 @@ fn point(
     let powers: Vec<f64> = at.states(load).iter().map(|state| state.power()).collect();
     ResponsePoint {
         hertz,
+        load,
         gamma,
         impedance: input.impedance(plan.reference),
         swr: reference::swr(gamma.norm()),

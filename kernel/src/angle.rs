@@ -7,18 +7,36 @@
 use crate::product;
 use crate::word::round_shift;
 
-/// Position of the electrical angle of a line within its half turn.
+/// Electrical angle of a line in 2^-64 turns, whole turns left out. Exact.
+#[inline]
+pub(crate) fn turns(hertz: u32, turns_per_hertz: u64) -> u64 {
+    let low = product::unsigned(hertz, turns_per_hertz as u32);
+    let high = hertz.wrapping_mul((turns_per_hertz >> 32) as u32);
+    low.wrapping_add((high as u64) << 32)
+}
+
+/// Position of an angle in 2^-64 turns within its half turn.
 ///
 /// The result h stands for the angle θ = h · π/2 / 2^63, −π/2 ≤ θ < π/2, which differs from the
 /// line's angle by a whole number of half turns. A half turn only changes the sign of the whole
 /// state. Exact.
 #[inline]
-pub(crate) fn within_half_turn(hertz: u32, turns_per_hertz: u64) -> i64 {
-    let low = product::unsigned(hertz, turns_per_hertz as u32);
-    let high = hertz.wrapping_mul((turns_per_hertz >> 32) as u32);
-    let turns = low.wrapping_add((high as u64) << 32);
+pub(crate) fn within_half_turn(turns: u64) -> i64 {
     (turns << 1) as i64
 }
+
+/// Whether the half turns that [`within_half_turn`] leaves out are odd in number.
+///
+/// An angle of a quarter turn and above is a half turn plus something negative. `rounding`, in
+/// 2^-64 turns, is what the sine and cosine add before they drop bits: an angle just below a
+/// quarter turn that rounds up to it is taken as a half turn away, and counts as such.
+#[inline]
+pub(crate) fn is_odd_half_turn(turns: u64, rounding: u64) -> bool {
+    turns.wrapping_add((1 << 62) + rounding) >> 63 != 0
+}
+
+/// Half a unit of [`rounded`], in 2^-64 turns.
+pub(crate) const ROUNDING: u64 = 1 << 30;
 
 /// The angle in 32 bits, rounded half up; π/2 becomes −π/2, a half turn away.
 #[inline]
@@ -103,13 +121,46 @@ mod tests {
                 let turns = u128::from(rate) * u128::from(hertz);
                 // fraction of a half turn, as a signed number
                 let half = ((turns << 1) as u64) as i64;
-                assert_eq!(within_half_turn(hertz, rate), half);
+                assert_eq!(within_half_turn(super::turns(hertz, rate)), half);
                 let expected = half as f64 / 2.0_f64.powi(63) * FRAC_PI_2;
                 let h = rounded(half);
                 let mut error = f64::from(h) / UNIT * FRAC_PI_2 - expected;
                 error -= (error / (2.0 * FRAC_PI_2)).round() * 2.0 * FRAC_PI_2;
                 let limit = std::f64::consts::TAU * 2.0_f64.powi(-34) * 1.000_001;
                 assert!(error.abs() <= limit, "{delay} s at {hertz} Hz: {error}");
+            }
+        }
+    }
+
+    /// What is left of the angle plus the half turns taken off is the angle, to its rounding.
+    #[test]
+    fn half_turns_are_counted_across_every_quarter_turn() {
+        let steps = [
+            0,
+            1,
+            ROUNDING - 1,
+            ROUNDING,
+            ROUNDING + 1,
+            2 * ROUNDING,
+            1 << 40,
+        ];
+        for quarter in 0..4_u64 {
+            for step in steps {
+                for turns in [
+                    (quarter << 62).wrapping_add(step),
+                    (quarter << 62).wrapping_sub(step),
+                ] {
+                    let half = within_half_turn(turns);
+                    // both in 2^-64 turns
+                    let exact = half >> 1;
+                    let short = i64::from(rounded(half)) << 31;
+                    for (left, rounding) in [(exact, 0), (short, ROUNDING)] {
+                        let odd = u64::from(is_odd_half_turn(turns, rounding));
+                        let sum = (left as u64).wrapping_add(odd << 63);
+                        let error = sum.wrapping_sub(turns) as i64;
+                        assert!(error.unsigned_abs() <= rounding, "{turns:#x}");
+                    }
+                }
             }
         }
     }

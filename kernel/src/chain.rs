@@ -68,11 +68,14 @@ impl<R: crate::Real, const N: usize> Chain<R, N> {
         convert: impl Fn(Complex<R>) -> Z,
     ) -> Resolved<Z, N> {
         let mut steps = Vec::new();
+        let mut inverted = false;
         for stage in &self.stages {
+            let (step, inverts) = stage.resolve(frequency);
             // both have capacity N, so that no stage is left out
-            let _ = steps.push(stage.at(frequency).map(&convert));
+            let _ = steps.push(step.map(&convert));
+            inverted ^= inverts;
         }
-        Resolved { steps }
+        Resolved { steps, inverted }
     }
 }
 
@@ -80,6 +83,7 @@ impl<R: crate::Real, const N: usize> Chain<R, N> {
 #[derive(Clone, PartialEq, Debug)]
 pub struct Resolved<Z, const N: usize> {
     steps: Vec<Step<Z>, N>,
+    inverted: bool,
 }
 
 impl<Z, const N: usize> Resolved<Z, N> {
@@ -88,11 +92,39 @@ impl<Z, const N: usize> Resolved<Z, N> {
         &self.steps
     }
 
+    /// Whether the chain's lines leave out an odd number of half turns, so that a walk comes out
+    /// with the other sign. No ratio of v and i shows it, a transmission does.
+    pub fn inverted(&self) -> bool {
+        self.inverted
+    }
+
     /// Takes a state at the load to the source.
     #[inline]
     pub fn walk<S: Walk<Z>>(&self, mut state: S) -> S {
         for step in self.steps.iter().rev() {
             state.pass(step);
+        }
+        state
+    }
+
+    /// The states at the nodes between the stages, in the order of the walk: the load's first, then
+    /// that at the source side of the last stage, and last that at the source.
+    #[inline]
+    pub fn nodes<S: Walk<Z> + Copy>(&self, load: S) -> impl Iterator<Item = S> {
+        let mut state = load;
+        let passed = self.steps.iter().rev().map(move |step| {
+            state.pass(step);
+            state
+        });
+        core::iter::once(load).chain(passed)
+    }
+
+    /// Takes a state through the chain turned end for end: a load at what was the source, seen
+    /// from what was the load.
+    #[inline]
+    pub fn walk_turned<S: Walk<Z>>(&self, mut state: S) -> S {
+        for step in &self.steps {
+            state.pass_turned(step);
         }
         state
     }

@@ -13,6 +13,8 @@ macro_rules! real {
         impl Real for $float {
             const ZERO: Self = 0.0;
             const ONE: Self = 1.0;
+            // an angle that rounds to a quarter turn stays one
+            const ANGLE_ROUNDING: u64 = 0;
             #[inline]
             fn from_hertz(hertz: u32) -> Self {
                 hertz as $float

@@ -8,11 +8,13 @@ use crate::word::{Word, round_shift};
 ///
 /// The larger part m obeys 2^(W−3) ≤ |m| < 2^(W−2), or both are zero: in value the larger part is
 /// at least 2^(exponent−3) and less than 2^(exponent−2).
-#[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
 pub struct Immittance<W> {
     pub(crate) re: W,
     pub(crate) im: W,
-    pub(crate) exponent: i8,
+    /// `up` and `down`, see there, each times eight.
+    up: u8,
+    down: u8,
 }
 
 impl<W: Word> Immittance<W> {
@@ -36,7 +38,7 @@ impl<W: Word> Immittance<W> {
         };
         let exponent = top(z.re).max(top(z.im));
         if exponent < Self::EXPONENT_MIN {
-            return Self::default();
+            return Self::new(0, 0, 0);
         }
         // a saturated immittance keeps its direction
         let excess = (exponent - Self::EXPONENT_MAX).max(0);
@@ -61,11 +63,33 @@ impl<W: Word> Immittance<W> {
 
     #[inline(always)]
     fn new(re: i32, im: i32, exponent: i32) -> Self {
+        // kept times eight: the compiler then knows that what it shifts by is below 32
+        let (up, down) = ((exponent + 1).max(1) as u8, (-exponent).max(0) as u8);
         Self {
             re: W::from_i32(re),
             im: W::from_i32(im),
-            exponent: exponent as i8,
+            up: up << 3,
+            down: down << 3,
         }
+    }
+
+    /// Bits from a product's upper half to one below the last place of a state's word: the
+    /// exponent + 1, at least 1.
+    #[inline(always)]
+    pub(crate) fn up(&self) -> u32 {
+        (self.up >> 3) as u32
+    }
+
+    /// Bits by which a product is smaller than with exponent 0, at least 0.
+    #[inline(always)]
+    pub(crate) fn down(&self) -> u32 {
+        (self.down >> 3) as u32
+    }
+
+    /// The exponent of the type's documentation.
+    #[inline(always)]
+    pub(crate) fn power(&self) -> i32 {
+        self.up() as i32 - 1 - self.down() as i32
     }
 
     /// The two words, real part first.
@@ -75,7 +99,7 @@ impl<W: Word> Immittance<W> {
 
     /// Power of two that the words are multiplied by.
     pub fn exponent(&self) -> i32 {
-        self.exponent as i32 - W::BITS as i32
+        self.power() - W::BITS as i32
     }
 
     /// The immittance with the other sign.
@@ -83,7 +107,7 @@ impl<W: Word> Immittance<W> {
         Self {
             re: W::from_i32(-self.re.to_i32()),
             im: W::from_i32(-self.im.to_i32()),
-            exponent: self.exponent,
+            ..*self
         }
     }
 }

@@ -38,12 +38,15 @@ mod frequency;
 mod hyperbolic;
 pub mod image;
 mod immittance;
+mod logarithm;
 mod product;
 mod readout;
 mod real;
 mod scalar;
 mod stage;
 mod state;
+#[cfg(test)]
+mod testing;
 mod walk;
 mod word;
 
@@ -52,7 +55,7 @@ pub use chain::{Chain, Resolved, TooManyStages};
 pub use float::FloatState;
 pub use frequency::Frequency;
 pub use immittance::Immittance;
-pub use readout::{Gamma, Moments, Swr};
+pub use readout::{ChainMatrix, Decibels, Drive, Gamma, Moments, Scattering, Swr};
 pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{

@@ -145,6 +145,7 @@ impl Scalar {
 impl Real for Scalar {
     const ZERO: Self = Self::ZERO;
     const ONE: Self = Self::ONE;
+    const ANGLE_ROUNDING: u64 = crate::angle::ROUNDING;
 
     #[inline]
     fn from_hertz(hertz: u32) -> Self {

@@ -73,18 +73,19 @@ impl<W: Word> State<W> {
         let v = self.v.map(|word| word.times(of_v.re));
         let i = self.i.map(|word| word.times(of_i.re));
         // the product times 2^(exponent − W) must be within a word after growth
-        let need = |pair: [W::Double; 2], exponent: i8| {
+        let need = |pair: [W::Double; 2], exponent: i32| {
             let top = magnitude(W::upper(pair[0], 0)) | magnitude(W::upper(pair[1], 0));
             let bits = 32 - (top + 1).leading_zeros() as i32;
-            bits + exponent as i32 - (W::BITS as i32 - 2)
+            bits + exponent - (W::BITS as i32 - 2)
         };
-        let grown = need(v, of_v.exponent).max(need(i, of_i.exponent)).max(0);
-        let settle = |product: W::Double, exponent: i8| {
-            let right = W::BITS as i32 - exponent as i32 + grown;
+        let (of_v, of_i) = (of_v.power(), of_i.power());
+        let grown = need(v, of_v).max(need(i, of_i)).max(0);
+        let settle = |product: W::Double, exponent: i32| {
+            let right = W::BITS as i32 - exponent + grown;
             W::from_i32(round_shift(product, right.unsigned_abs()).to_i64() as i32)
         };
-        self.v = v.map(|product| settle(product, of_v.exponent));
-        self.i = i.map(|product| settle(product, of_i.exponent));
+        self.v = v.map(|product| settle(product, of_v));
+        self.i = i.map(|product| settle(product, of_i));
         self.exponent += grown;
     }
 }
@@ -92,24 +93,21 @@ impl<W: Word> State<W> {
 /// target ← target + z · other, with both kept in one block; returns by how many powers of two
 /// the block has grown.
 ///
-/// The complex product and the target are summed at full width and rounded once, half up.
-/// Headroom: words of the state are within ±2^(W−2) and those of z below it, so the parts of the product
-/// stay below 2^(2W−3). With the immittance's exponent k:
+/// The complex product and the target are summed at full width and rounded once, half up. With
+/// the target in units of 1, the product is in 2^(up − 1 − down − W). Headroom: words of the state
+/// are within ±2^(W−2) and those of z below it, so the parts of the product stay below 2^(2W−3).
 ///
-/// - k ≤ 0, parts of z below 1/4: the product adds less than 2^(W−3), so the sum fits a word and
-///   the block grows by at most one.
-/// - k ≥ 1: the target is raised to the product's scale, 2^(W−k) per unit, where the sum stays
-///   below 2^(2W−2) − 2^W; the block grows until the sum fits, by k at most. That is judged by the
-///   bits in the upper halves of both parts and one more, so that rounding has room.
+/// Whether the block can stay as it is, is judged by the upper halves alone: `top`, within 2 of
+/// the sum's floor in units of 2^(up−1). Where it can, the sum in half units fits a word, so that
+/// its two terms may be added in wrapping arithmetic whatever their size.
 #[inline(always)]
 fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) -> u32 {
     let product = times(z, other);
     let word = target.map(W::to_i32);
-    let exponent = z.exponent as i32;
-    if exponent <= 0 {
-        // one bit below the word's last place
-        let right = exponent.unsigned_abs() & 31;
-        let low = product.map(|part| W::upper(part, 1) >> right);
+    let up = z.up();
+    if up == 1 {
+        let down = z.down();
+        let low = product.map(|part| W::upper(part, 1) >> down);
         let sum = [0, 1].map(|part| word[part] + round_half(low[part]));
         if magnitude(sum[0]) | magnitude(sum[1]) < W::LIMIT {
             *target = sum.map(W::from_i32);
@@ -120,28 +118,25 @@ fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) ->
         *other = other.map(|word| W::from_i32(round_half(word.to_i32())));
         return 1;
     }
-    let exponent = exponent as u32;
-    let upper = product.map(|part| W::upper(part, 0));
-    let top = [0, 1].map(|part| (word[part] >> exponent) + upper[part]);
-    let room = W::BITS - 2 - exponent;
-    if (magnitude(top[0]) | magnitude(top[1])) + 2 < 1 << room {
-        // twice the word is a whole number at one bit below its last place; the sum fits 32 bits
-        // even where the product alone does not
+    let twice = word.map(|word| word << 1);
+    let top = [0, 1].map(|part| magnitude((twice[part] >> up) + W::upper(product[part], 0)));
+    if ((top[0] | top[1]) as u32 + 2) >> (W::BITS - 1 - up) == 0 {
         *target = [0, 1].map(|part| {
-            let low = W::upper(product[part], exponent + 1);
-            W::from_i32(round_half((word[part] << 1).wrapping_add(low)))
+            W::from_i32(round_half(
+                twice[part].wrapping_add(W::upper(product[part], up)),
+            ))
         });
         return 0;
     }
-    let sum = [0, 1].map(|part| target[part].raised(exponent) + product[part]);
-    // bits from the sum's top to one below the word's last place
+    let sum = [0, 1].map(|part| target[part].raised(up - 1) + product[part]);
     let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
-    let mut up = exponent;
-    while up > 1 && (top + 1) >> (W::BITS - 1 - up) != 0 {
-        up -= 1;
+    // bits from the top of the sum to one below the word's last place
+    let mut kept = up - 1;
+    while kept > 1 && (top + 1) >> (W::BITS - 1 - kept) != 0 {
+        kept -= 1;
     }
-    *target = sum.map(|sum| W::from_i32(round_half(W::upper(sum, up))));
-    let grown = exponent + 1 - up;
+    *target = sum.map(|sum| W::from_i32(round_half(W::upper(sum, kept))));
+    let grown = up - kept;
     *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
     grown
 }

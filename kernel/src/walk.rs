@@ -31,6 +31,15 @@ pub trait Walk<Z> {
         }
     }
 
+    /// Through a step turned end for end. All but a transformer are the same from both ends.
+    #[inline]
+    fn pass_turned(&mut self, step: &Step<Z>) {
+        match step {
+            Step::Stretch { ratio, inverse } => self.stretch(inverse, ratio),
+            Step::Series(_) | Step::Shunt(_) | Step::Tee { .. } => self.pass(step),
+        }
+    }
+
     /// From the source side of a step to its load side.
     #[inline]
     fn pass_back(&mut self, step: &Step<Z>) {

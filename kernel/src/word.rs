@@ -121,11 +121,9 @@ impl Word for i32 {
     }
     #[inline(always)]
     fn upper(sum: i64, up: u32) -> i32 {
-        let upper = (sum >> 32) as u32;
-        if up == 0 {
-            return upper as i32;
-        }
-        (upper << up | sum as u32 >> (32 - up)) as i32
+        let (upper, lower) = ((sum >> 32) as u32, sum as u32);
+        // 31 − up, in a form that shows to be below 32
+        (upper << up | lower >> 1 >> (up ^ 31)) as i32
     }
     #[inline(always)]
     fn to_i32(self) -> i32 {

@@ -7,9 +7,9 @@ use crate::plan::{Arrangement, Branch, Loss, Reactor};
 use crate::quantity::Dimension;
 
 const ARRANGEMENT: Key = Key::new("arrangement", r#"arrangement = "series""#);
-const RESISTANCE: Key = Key::new("resistance", r#"resistance = "50 ohm""#);
-const INDUCTANCE: Key = Key::new("inductance", r#"inductance = "1.2 uH""#);
-const CAPACITANCE: Key = Key::new("capacitance", r#"capacitance = "100 pF""#);
+pub(super) const RESISTANCE: Key = Key::new("resistance", r#"resistance = "50 ohm""#);
+pub(super) const INDUCTANCE: Key = Key::new("inductance", r#"inductance = "1.2 uH""#);
+pub(super) const CAPACITANCE: Key = Key::new("capacitance", r#"capacitance = "100 pF""#);
 const Q: Key = Key::new("q", "q = 180");
 const ESR: Key = Key::new("esr", r#"esr = "0.2 ohm""#);
 const INDUCTOR_Q: Key = Key::new("inductor_q", "inductor_q = 180");
@@ -17,11 +17,14 @@ const INDUCTOR_ESR: Key = Key::new("inductor_esr", r#"inductor_esr = "0.2 ohm""#
 const CAPACITOR_Q: Key = Key::new("capacitor_q", "capacitor_q = 1000");
 const CAPACITOR_ESR: Key = Key::new("capacitor_esr", r#"capacitor_esr = "0.1 ohm""#);
 
-const ELEMENTS: [Key; 3] = [RESISTANCE, INDUCTANCE, CAPACITANCE];
+pub(super) const ELEMENTS: [Key; 3] = [RESISTANCE, INDUCTANCE, CAPACITANCE];
 const INDUCTOR_LOSS: [Key; 2] = [INDUCTOR_Q, INDUCTOR_ESR];
 const CAPACITOR_LOSS: [Key; 2] = [CAPACITOR_Q, CAPACITOR_ESR];
 /// Loss of the only reactor, whichever it is.
 const ONLY_LOSS: [Key; 2] = [Q, ESR];
+
+/// Advice where none of them is there.
+pub(super) const ADD_AN_ELEMENT: &str = "add a resistance, an inductance or a capacitance";
 
 /// Reads a branch.
 pub(super) fn branch(value: &Value<'_>) -> Result<Branch, Diagnostic> {
@@ -34,7 +37,7 @@ pub(super) fn branch(value: &Value<'_>) -> Result<Branch, Diagnostic> {
     let present = elements.iter().flatten().count();
     if present == 0 {
         let message = "the branch has no element".to_owned();
-        return Err(table.fault(message, "add a resistance, an inductance or a capacitance"));
+        return Err(table.fault(message, ADD_AN_ELEMENT));
     }
     let arrangement = arrangement(&table, present)?;
     let [resistance, inductance, capacitance] = elements;

@@ -8,7 +8,7 @@
 //! to = "12 MHz"
 //! points = 41                       # the default; 1 where `from` equals `to`
 //! [load]
-//! swr_up_to = 10                    # or impedances = [["30 ohm", "-40 ohm"], ...] as R, X
+//! swr_up_to = 10                    # or one of the other kinds of load, see below
 //! [firmware]
 //! word_bits = 32                    # 16 or 32, the default
 //! [accuracy]
@@ -26,12 +26,24 @@
 //! transformer = { ratio = 3 }       # voltage at the radio side ÷ voltage at the load side
 //! ```
 //!
+//! The loads are one of
+//!
+//! - `swr_up_to = 10`: all with a standing wave ratio up to this one;
+//! - `impedances = [["30 ohm", "-40 ohm"], ...]`: these, as R and X, at every frequency;
+//! - `one_port = "antenna.s1p"`: the one measured at each frequency, in a file of the Touchstone
+//!   standard ([`crate::touchstone`]) whose path starts in the folder of the chain file. Its
+//!   frequencies have to enclose the band; between them Γ is interpolated in a straight line, after
+//!   it has been referred to `reference`;
+//! - `series = { resistance = "36 ohm", inductance = "4.7 uH", capacitance = "150 pF" }`: that of a
+//!   series circuit, from which one or two elements may be left out.
+//!
 //! Quantities are strings with their unit ([`crate::quantity`]) within
 //! [`Dimension::limits`](crate::quantity::Dimension::limits). The first fault found is reported with
 //! its line and column; nothing is corrected silently.
 
 mod branch;
 mod line;
+mod load;
 mod loss;
 mod settings;
 mod stage;
@@ -39,11 +51,10 @@ mod syntax;
 mod table;
 mod value;
 
-use std::fs::File;
-use std::io::Read as _;
 use std::path::Path;
 
 use crate::diagnostic::{Diagnostic, Source};
+use crate::input;
 use crate::plan::Plan;
 
 /// Largest chain file in bytes: hundreds of times a full one, and an end to reading a device.
@@ -56,27 +67,9 @@ pub const LARGEST_FILE: u64 = 1 << 20;
 /// chain file.
 pub fn read(path: &Path) -> Result<Plan, Diagnostic> {
     let file = path.display().to_string();
-    let mut bytes = Vec::new();
-    let read =
-        File::open(path).and_then(|opened| opened.take(LARGEST_FILE + 1).read_to_end(&mut bytes));
-    if let Err(error) = read {
-        let message = format!("cannot read the chain file: {error}");
-        return Err(Diagnostic::of_file(
-            &file,
-            message,
-            "give the path of a readable chain file",
-        ));
-    }
-    if bytes.len() as u64 > LARGEST_FILE {
-        let message = format!("the file is larger than {LARGEST_FILE} bytes");
-        return Err(Diagnostic::of_file(
-            &file,
-            message,
-            "give a chain file in TOML",
-        ));
-    }
+    let bytes = input::read(path, LARGEST_FILE, "chain file")?;
     match std::str::from_utf8(&bytes) {
-        Ok(text) => parse(text, &file),
+        Ok(text) => parse_in(folder_of(path), text, &file),
         Err(error) => {
             let start = error.valid_up_to();
             let message = format!("byte {:#04x} is not part of UTF-8 text", bytes[start]);
@@ -91,13 +84,22 @@ pub fn read(path: &Path) -> Result<Plan, Diagnostic> {
     }
 }
 
-/// Reads a chain file from its `text`; `file` is the name under which faults are reported.
+/// Reads a chain file from its `text`; `file` is the name under which faults are reported, and in
+/// whose folder the paths in the text start.
 ///
 /// # Errors
 /// Where the text is not TOML or is no valid chain file.
 pub fn parse(text: &str, file: &str) -> Result<Plan, Diagnostic> {
+    parse_in(folder_of(Path::new(file)), text, file)
+}
+
+fn parse_in(folder: &Path, text: &str, file: &str) -> Result<Plan, Diagnostic> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
     let source = Source { file, text };
     let document = syntax::document(source)?;
-    settings::plan(source, document.get_ref())
+    settings::plan(source, document.get_ref(), folder)
+}
+
+fn folder_of(file: &Path) -> &Path {
+    file.parent().unwrap_or(Path::new(""))
 }

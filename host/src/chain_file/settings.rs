@@ -1,12 +1,15 @@
-//! All of a chain file but its stages: title, reference, band, loads, firmware, accuracy.
+//! All of a chain file but its loads and stages: title, reference, band, firmware, accuracy.
+
+use std::path::Path;
 
 use toml::de::DeTable;
 
+use super::load;
 use super::stage;
 use super::table::{Key, Table};
 use super::value::Value;
 use crate::diagnostic::{Diagnostic, Source};
-use crate::plan::{Accuracy, Band, Firmware, Loads, Plan, STAGE_CAPACITY, Stage};
+use crate::plan::{Accuracy, Band, Firmware, Plan, STAGE_CAPACITY, Stage};
 use crate::quantity::Dimension;
 
 const TITLE: Key = Key::new("title", r#"title = "antenna tuner, 2 to 12 MHz""#);
@@ -21,9 +24,6 @@ const FROM: Key = Key::new("from", r#"from = "2 MHz""#);
 const TO: Key = Key::new("to", r#"to = "12 MHz""#);
 const POINTS: Key = Key::new("points", "points = 41");
 
-const SWR_UP_TO: Key = Key::new("swr_up_to", "swr_up_to = 10");
-const IMPEDANCES: Key = Key::new("impedances", r#"impedances = [["30 ohm", "-40 ohm"]]"#);
-
 const WORD_BITS: Key = Key::new("word_bits", "word_bits = 32");
 const GAMMA: Key = Key::new("gamma", "gamma = 1e-4");
 
@@ -33,10 +33,14 @@ const DEFAULT_WORD_BITS: u32 = 32;
 const DEFAULT_GAMMA: f64 = 1e-4;
 
 /// Most grid points of a band and most impedances of a list.
-const MOST_POINTS: u32 = 100_000;
+pub(super) const MOST_POINTS: u32 = 100_000;
 
-/// Reads a whole document.
-pub(super) fn plan<'a>(source: Source<'a>, document: &'a DeTable<'a>) -> Result<Plan, Diagnostic> {
+/// Reads a whole document; `folder` is where the paths in it start.
+pub(super) fn plan<'a>(
+    source: Source<'a>,
+    document: &'a DeTable<'a>,
+    folder: &Path,
+) -> Result<Plan, Diagnostic> {
     let keys = [TITLE, REFERENCE, BAND, LOAD, FIRMWARE, ACCURACY, STAGE];
     let file = Table::open(source, "the chain file", 0..0, document, &keys)?;
     let title = file.required(TITLE)?.text()?;
@@ -44,11 +48,12 @@ pub(super) fn plan<'a>(source: Source<'a>, document: &'a DeTable<'a>) -> Result<
         Some(value) => value.quantity(Dimension::Resistance)?,
         None => DEFAULT_REFERENCE,
     };
+    let band = band(&file.required(BAND)?)?;
     Ok(Plan {
         title,
         reference,
-        band: band(&file.required(BAND)?)?,
-        loads: loads(&file.required(LOAD)?)?,
+        band,
+        loads: load::loads(&file.required(LOAD)?, reference, band, folder)?,
         firmware: firmware(file.optional(FIRMWARE))?,
         accuracy: accuracy(file.optional(ACCURACY))?,
         stages: stages(&file.required(STAGE)?)?,
@@ -80,40 +85,6 @@ fn band(value: &Value<'_>) -> Result<Band, Diagnostic> {
         return Err(points_value.fault(message, "write 2 points or more, or `to` equal to `from`"));
     }
     Ok(Band { from, to, points })
-}
-
-fn loads(value: &Value<'_>) -> Result<Loads, Diagnostic> {
-    let table = value.table("[load]", &[SWR_UP_TO, IMPEDANCES])?;
-    let loads = table.exactly_one(&[SWR_UP_TO, IMPEDANCES])?;
-    if loads.key().name == SWR_UP_TO.name {
-        let swr = loads.number("1 or more, and finite", |swr| swr >= 1.0)?;
-        return Ok(Loads::SwrUpTo(swr));
-    }
-    let items = loads.items()?;
-    if items.is_empty() || items.len() > MOST_POINTS as usize {
-        let message = format!(
-            "{} impedances, where 1 to {MOST_POINTS} are wanted",
-            items.len()
-        );
-        return Err(loads.fault(message, format!("write for example {}", IMPEDANCES.example)));
-    }
-    let impedances: Result<_, _> = items.iter().map(impedance).collect();
-    Ok(Loads::Impedances(impedances?))
-}
-
-/// A pair of resistance and reactance in ohms; a passive load has a resistance of zero or more.
-fn impedance(value: &Value<'_>) -> Result<(f64, f64), Diagnostic> {
-    let parts = value.items()?;
-    let [resistance, reactance] = &parts[..] else {
-        let message = format!("an impedance of {} values; two are wanted", parts.len());
-        let help = r#"write resistance and reactance, such as ["30 ohm", "-40 ohm"]"#;
-        return Err(value.fault(message, help));
-    };
-    let most = *Dimension::Resistance.limits().end();
-    Ok((
-        resistance.quantity_in(Dimension::Resistance, 0.0..=most)?,
-        reactance.quantity_in(Dimension::Resistance, -most..=most)?,
-    ))
 }
 
 fn firmware(value: Option<Value<'_>>) -> Result<Firmware, Diagnostic> {

@@ -14,7 +14,7 @@ pub struct Arguments {
 }
 
 const AFTER: &str = "Exit status: 0 met, 1 accuracy not met, 2 bad input or usage, \
-    3 could not read or write.\n\nExample: stagebits budget examples/tide-gauge-buoy.toml";
+    3 result not written.\n\nExample: stagebits budget examples/tide-gauge-buoy.toml";
 
 /// The commands.
 #[derive(Debug, Subcommand)]
@@ -58,7 +58,7 @@ pub struct Common {
     /// The chain file.
     pub file: PathBuf,
     /// Word length in bits, 10 to 32, in place of the chain file's.
-    #[arg(long, value_parser = clap::value_parser!(u32).range(10..=32))]
+    #[arg(long, value_name = "BITS", value_parser = clap::value_parser!(u32).range(10..=32))]
     pub word_bits: Option<u32>,
     /// Write JSON.
     #[arg(long)]

@@ -1,7 +1,6 @@
 //! From arguments to a written result.
 
-use std::io::{self, Write};
-use std::path::Path;
+use std::io;
 
 use num_complex::Complex;
 use stagebits_kernel::Bits;
@@ -12,6 +11,7 @@ use crate::chain_file;
 use crate::constants;
 use crate::diagnostic::Diagnostic;
 use crate::envelope::Effort;
+use crate::output::file::Destination;
 use crate::output::{json, text};
 use crate::plan::{Loads, Plan};
 use crate::quantity::{self, Dimension};
@@ -56,8 +56,8 @@ macro_rules! with_word {
 /// Does what the arguments ask for.
 ///
 /// # Errors
-/// [`Failure`] where there is no result; nothing has been written to standard output then, and
-/// an output file is as it was before.
+/// [`Failure`] where there is no result; an output file is as it was before then, and nothing has
+/// been written to standard output unless it is that which failed.
 pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     match &arguments.command {
         Command::Respond(request) => run_respond(request),
@@ -67,27 +67,28 @@ pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
 
 fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
     let plan = read(&request.common)?;
+    let given = request.load.as_deref().map(load).transpose()?;
+    let one_load = given.or(match &plan.loads {
+        Loads::Impedances(list) => Some(Complex::new(list[0].0, list[0].1)),
+        Loads::SwrUpTo(_) => Some(Complex::new(plan.reference, 0.0)),
+        Loads::Measured(_) | Loads::SeriesModel(_) => None,
+    });
+    let destination = destination(&request.common)?;
     let exact = constants::exact(&plan);
-    let load = match &request.load {
-        Some(text) => load(text, &plan)?,
-        None => match &plan.loads {
-            Loads::Impedances(list) => Complex::new(list[0].0, list[0].1),
-            Loads::SwrUpTo(_) => Complex::new(plan.reference, 0.0),
-        },
-    };
-    let gamma = reference::gamma_from_impedance(load, plan.reference);
+    let gamma = one_load.map(|load| reference::gamma_from_impedance(load, plan.reference));
     let response = with_word!(plan.firmware.word_bits, respond(&plan, &exact, gamma));
     let rendering = if request.common.json {
         json::response(&plan, &response)
     } else {
         text::response(&plan, &response)
     };
-    write(&request.common, &rendering)?;
+    write(&request.common, &destination, &rendering)?;
     Ok(Outcome::Met)
 }
 
 fn run_budget(request: &arguments::Budget) -> Result<Outcome, Failure> {
     let plan = read(&request.common)?;
+    let destination = destination(&request.common)?;
     let exact = constants::exact(&plan);
     let effort = Effort {
         points: request.points,
@@ -99,7 +100,7 @@ fn run_budget(request: &arguments::Budget) -> Result<Outcome, Failure> {
     } else {
         text::budget(&plan, &result)
     };
-    write(&request.common, &rendering)?;
+    write(&request.common, &destination, &rendering)?;
     Ok(if result.meets(plan.accuracy) {
         Outcome::Met
     } else {
@@ -115,8 +116,8 @@ fn read(common: &Common) -> Result<Plan, Failure> {
     Ok(plan)
 }
 
-/// A load written as 'R, X' in ohms.
-fn load(text: &str, plan: &Plan) -> Result<Complex<f64>, Failure> {
+/// A load written as 'R, X', within the limits of the chain file's loads.
+fn load(text: &str) -> Result<Complex<f64>, Failure> {
     let usage = |what: &str| {
         Failure::Usage(format!(
             "--load '{text}': {what}; write resistance and reactance, such as '36 ohm, -120 ohm'"
@@ -129,38 +130,39 @@ fn load(text: &str, plan: &Plan) -> Result<Complex<f64>, Failure> {
         quantity::parse(part.trim(), Dimension::Resistance).map_err(|error| usage(&error.message))
     };
     let load = Complex::new(ohms(r)?, ohms(x)?);
-    let largest = *Dimension::Resistance.limits().end();
     if load.re < 0.0 {
         return Err(usage("a passive load has no negative resistance"));
     }
-    if load.norm() > largest * plan.reference.max(1.0) {
-        return Err(usage("this is beyond every load"));
+    let most = *Dimension::Resistance.limits().end();
+    if load.re.max(load.im.abs()) > most {
+        let most = Dimension::Resistance.write(most);
+        return Err(usage(&format!("the limit of either is {most}")));
     }
     Ok(load)
 }
 
-/// Writes a result: to standard output, or to a temporary file that then takes the place of the
-/// one named, so that a reader sees the old or the new one and never a part.
-fn write(common: &Common, rendering: &str) -> Result<(), Failure> {
-    let Some(path) = &common.output else {
-        let mut stdout = io::stdout().lock();
-        return match stdout
-            .write_all(rendering.as_bytes())
-            .and_then(|()| stdout.flush())
-        {
-            // the reader has seen what it wanted
-            Err(error) if error.kind() == io::ErrorKind::BrokenPipe => Ok(()),
-            result => result.map_err(|error| Failure::Write(format!("standard output: {error}"))),
-        };
-    };
-    let failed = |error: io::Error| Failure::Write(format!("{}: {error}", path.display()));
-    let folder = match path.parent() {
-        Some(folder) if folder != Path::new("") => folder,
-        _ => Path::new("."),
-    };
-    let mut file = tempfile::NamedTempFile::new_in(folder).map_err(failed)?;
-    file.write_all(rendering.as_bytes()).map_err(failed)?;
-    file.as_file().sync_all().map_err(failed)?;
-    file.persist(path).map_err(|error| failed(error.error))?;
-    Ok(())
+/// Looked at before the work is done, so that hours of it are not lost.
+fn destination(common: &Common) -> Result<Destination, Failure> {
+    let path = common.output.as_deref();
+    let destination = Destination::new(path).map_err(|error| not_written(common, &error))?;
+    if destination.replaces(&common.file) {
+        let path = common.file.display();
+        return Err(Failure::Usage(format!(
+            "--output would replace the chain file {path}; name another file"
+        )));
+    }
+    Ok(destination)
+}
+
+fn write(common: &Common, destination: &Destination, rendering: &str) -> Result<(), Failure> {
+    destination
+        .write(rendering)
+        .map_err(|error| not_written(common, &error))
+}
+
+fn not_written(common: &Common, error: &io::Error) -> Failure {
+    Failure::Write(match &common.output {
+        Some(path) => format!("{}: {error}", path.display()),
+        None => format!("standard output: {error}"),
+    })
 }

@@ -1,4 +1,5 @@
-//! Results as JSON. Complex numbers are `{"re": …, "im": …}`; SI units unless a name says other.
+//! Results as JSON. Complex numbers are `{"re": …, "im": …}`; SI units unless a name says other;
+//! null where a figure is infinite or not defined.
 
 use num_complex::Complex;
 use serde_json::{Value, json};
@@ -18,14 +19,18 @@ pub fn response(plan: &Plan, response: &Response) -> String {
         .map(|point| {
             let Matrix { a, b, c, d } = point.abcd;
             let SParameters { s11, s12, s21, s22 } = point.s;
+            // a lossless stage may seem to gain the rounding of f64
+            let passive = |loss: &f64| finite(if *loss < 0.0 { 0.0 } else { *loss });
+            let losses: Vec<_> = point.stage_losses.iter().map(passive).collect();
             json!({
                 "hertz": point.hertz,
+                "load_gamma": complex(point.load),
                 "gamma": complex(point.gamma),
                 "impedance_ohm": complex(point.impedance),
                 "swr": finite(point.swr),
                 "return_loss_db": finite(point.return_loss),
                 "transducer_gain_db": finite(point.gain),
-                "stage_losses_db": point.stage_losses,
+                "stage_losses_db": losses,
                 "abcd": { "a": complex(a), "b_ohm": complex(b), "c_siemens": complex(c), "d": complex(d) },
                 "s": { "s11": complex(s11), "s12": complex(s12), "s21": complex(s21), "s22": complex(s22) },
                 "word_gamma": complex(point.word_gamma),
@@ -38,7 +43,6 @@ pub fn response(plan: &Plan, response: &Response) -> String {
         "title": plan.title,
         "reference_ohm": plan.reference,
         "word_bits": response.word_bits,
-        "load_gamma": complex(response.load),
         "stages": plan.stages.iter().map(|stage| &stage.name).collect::<Vec<_>>(),
         "points": points,
     }))
@@ -113,7 +117,7 @@ fn complex(z: Complex<f64>) -> Value {
     json!({ "re": finite(z.re), "im": finite(z.im) })
 }
 
-/// JSON has no infinity: null.
+/// JSON has no infinity and no NaN: null.
 fn finite(value: f64) -> Value {
     if value.is_finite() {
         json!(value)

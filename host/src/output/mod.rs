@@ -1,6 +1,7 @@
-//! Renderings of results: text for a terminal, JSON for a program.
+//! Renderings of results, text for a terminal and JSON for a program, and where they are written.
 
 pub mod figures;
+pub mod file;
 pub mod json;
 pub mod table;
 pub mod text;

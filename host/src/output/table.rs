@@ -2,17 +2,27 @@
 
 use std::fmt::Write;
 
-/// A table: the first column is aligned to the left, the others to the right.
+/// A table: names in a first column are aligned to the left, all else to the right.
 pub struct Table {
+    named: bool,
     rows: Vec<Vec<String>>,
 }
 
 impl Table {
-    /// A table with these headings.
-    pub fn new<S: Into<String>>(headings: impl IntoIterator<Item = S>) -> Self {
+    /// A table with these headings and names in its first column.
+    pub fn named<S: Into<String>>(headings: impl IntoIterator<Item = S>) -> Self {
         let headings = headings.into_iter().map(Into::into).collect();
         Self {
+            named: true,
             rows: vec![headings],
+        }
+    }
+
+    /// A table with these headings and figures in all of its columns.
+    pub fn of_figures<S: Into<String>>(headings: impl IntoIterator<Item = S>) -> Self {
+        Self {
+            named: false,
+            ..Self::named(headings)
         }
     }
 
@@ -33,11 +43,12 @@ impl Table {
         for row in &self.rows {
             let mut line = " ".repeat(indent);
             for (column, (cell, width)) in row.iter().zip(&widths).enumerate() {
-                if column == 0 {
-                    let _ = write!(line, "{cell:<width$}");
+                let gap = if column == 0 { "" } else { "  " };
+                let _ = if column == 0 && self.named {
+                    write!(line, "{cell:<width$}")
                 } else {
-                    let _ = write!(line, "  {cell:>width$}");
-                }
+                    write!(line, "{gap}{cell:>width$}")
+                };
             }
             text.push_str(line.trim_end());
             text.push('\n');

@@ -2,7 +2,7 @@
 
 use std::fmt::Write;
 
-use super::figures::{complex, engineering, error, frequency, grouped};
+use super::figures::{complex, engineering, error, fixed, frequency, grouped, ohms, significant};
 use super::table::Table;
 use crate::arithmetic::to_complex;
 use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
@@ -11,32 +11,38 @@ use crate::plan::Plan;
 use crate::reference::impedance_from_gamma;
 use crate::respond::Response;
 
+/// Widest line, in characters.
+const WIDTH: usize = 80;
+
 /// Widest name of a stage that a table shows in full.
 const NAME_WIDTH: usize = 30;
 
 /// The response as a table over frequency.
 pub fn response(plan: &Plan, response: &Response) -> String {
-    let load = impedance_from_gamma(response.load, plan.reference);
+    let load = response.load.map_or(
+        "from the chain file, one per frequency".to_owned(),
+        |load| ohms(impedance_from_gamma(load, plan.reference)),
+    );
     let mut text = format!(
-        "{}\nload {}, reference {}; |ΔΓ|: words of {} bits against f64\n\n",
-        plan.title,
-        ohms(load),
+        "{}\nload {}, reference {}\n|ΔΓ|: words of {} bits against f64\n\n",
+        shortened(&plan.title, WIDTH),
+        load,
         engineering(plan.reference, "ohm", 4),
         response.word_bits,
     );
-    let mut table = Table::new([
+    let mut table = Table::of_figures([
         "MHz", "|Γ|", "∠Γ °", "R ohm", "X ohm", "SWR", "RL dB", "gain dB", "|ΔΓ|",
     ]);
     for point in &response.points {
         table.row([
             format!("{:.6}", f64::from(point.hertz) / 1e6),
             format!("{:.5}", point.gamma.norm()),
-            format!("{:.2}", point.gamma.arg().to_degrees()),
+            fixed(point.gamma.arg().to_degrees(), 6, 2),
             significant(point.impedance.re),
             significant(point.impedance.im),
             significant(point.swr),
-            format!("{:.2}", point.return_loss),
-            format!("{:.3}", point.gain),
+            fixed(point.return_loss, 5, 2),
+            fixed(gain(point.gain), 6, 3),
             error((point.word_gamma - point.gamma).norm()),
         ]);
     }
@@ -51,34 +57,48 @@ pub fn response(plan: &Plan, response: &Response) -> String {
             "\nloss by stage at {}, where the chain loses most, dB",
             frequency(point.hertz),
         );
-        let mut table = Table::new(["stage", "dB"]);
+        let mut table = Table::named(["stage", "dB"]);
         for (stage, loss) in plan.stages.iter().zip(&point.stage_losses) {
-            table.row([shortened(&stage.name), format!("{:.3}", loss.max(0.0))]);
+            table.row([shortened(&stage.name, NAME_WIDTH), fixed(*loss, 6, 3)]);
         }
         table.row([
             "whole chain".to_owned(),
-            format!("{:.3}", total(&point.stage_losses)),
+            fixed(total(&point.stage_losses), 6, 3),
         ]);
         text.push_str(&table.text(2));
     }
     text
 }
 
+/// A load that takes no power may seem to return more than it gets, by the rounding of `f64`.
+fn gain(decibels: f64) -> f64 {
+    if decibels.is_nan() {
+        f64::NEG_INFINITY
+    } else {
+        decibels
+    }
+}
+
+/// Loss of the whole chain. Without power in the load it is infinite, and that of a stage into
+/// which no power flows is not a number.
 fn total(losses: &[f64]) -> f64 {
-    losses.iter().sum::<f64>().max(0.0)
+    let total = losses.iter().sum::<f64>();
+    if total.is_nan() { f64::INFINITY } else { total }
 }
 
 /// The budget: the verdict first, then stages and sources.
 pub fn budget(plan: &Plan, budget: &Budget) -> String {
     let wanted = plan.accuracy.gamma;
     let worst = budget.worst_error();
-    let verdict = if budget.meets(plan.accuracy) {
+    let verdict = if worst == 0.0 {
+        "met, no error found".to_owned()
+    } else if budget.meets(plan.accuracy) {
         format!("met, {} times better than wanted", times(wanted / worst))
     } else {
         format!("NOT met, {} times worse than wanted", times(worst / wanted))
     };
     let load = to_complex(budget.worst.load);
-    let mut text = format!("{}\n", plan.title);
+    let mut text = format!("{}\n", shortened(&plan.title, WIDTH));
     let mut line = |label: &str, value: String| {
         let _ = writeln!(text, "{label:<12}{value}");
     };
@@ -101,8 +121,8 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
     line(
         "points",
         format!(
-            "{} and {} of the local ascent, seed {}",
-            grouped(budget.effort.points),
+            "{} and {} of ascent, seed {}",
+            grouped(budget.surveyed),
             grouped(budget.evaluations - budget.surveyed),
             budget.effort.seed,
         ),
@@ -119,10 +139,10 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
     text.push_str(
         "\n|ΔΓ| by stage, radio side first; share: part of the error at the worst point\n",
     );
-    let mut table = Table::new(["", "at worst", "share", "rms", "worst"]);
+    let mut table = Table::named(["", "at worst", "share", "rms", "worst"]);
     let add = |table: &mut Table, name: &str, line: &Contribution| {
         table.row([
-            shortened(name),
+            shortened(name, NAME_WIDTH),
             error(line.at_worst.norm()),
             percent(share(line.at_worst, budget.total.at_worst)),
             error(line.spread.rms()),
@@ -138,41 +158,20 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
     text.push_str(&table.text(2));
 
     text.push_str("\n|ΔΓ| by source, all stages together\n");
-    let mut table = Table::new(["", "at worst", "share", "rms", "worst"]);
+    let mut table = Table::named(["", "at worst", "share", "rms", "worst"]);
     for (source, line) in StageSource::ALL.into_iter().zip(&budget.by_source) {
         add(&mut table, source.name(), line);
     }
     text.push_str(&table.text(2));
 
     text.push_str("\n|ΔΓ| at the worst point, stage by source\n");
-    let mut table = Table::new(["", "constants", "frequency", "immittances", "products"]);
+    let mut table = Table::named(["", "constants", "frequency", "immittances", "products"]);
     for (stage, sources) in plan.stages.iter().zip(&budget.stages) {
         let cells = sources.iter().map(|line| error(line.at_worst.norm()));
-        table.row(std::iter::once(shortened(&stage.name)).chain(cells));
+        table.row(std::iter::once(shortened(&stage.name, NAME_WIDTH)).chain(cells));
     }
     text.push_str(&table.text(2));
     text
-}
-
-/// An impedance: `210.2 − 168.1j ohm`.
-fn ohms(z: num_complex::Complex<f64>) -> String {
-    if !z.is_finite() || z.norm() > 1e9 {
-        return "open".to_owned();
-    }
-    format!("{} ohm", complex(z, 1))
-}
-
-/// Five significant digits without an exponent, or with one where that would be long.
-fn significant(value: f64) -> String {
-    let magnitude = value.abs();
-    if !value.is_finite() {
-        "∞".to_owned()
-    } else if magnitude >= 1e5 || (magnitude < 1e-3 && magnitude > 0.0) {
-        format!("{value:.1e}")
-    } else {
-        let whole = (magnitude.max(1.0).log10().floor() as usize) + 1;
-        format!("{value:.*}", 5_usize.saturating_sub(whole).min(3))
-    }
 }
 
 /// A share in tenths of a percent, without a sign where it rounds to zero.
@@ -186,14 +185,14 @@ fn times(ratio: f64) -> String {
     if ratio < 100.0 {
         format!("{ratio:.1}")
     } else {
-        grouped(ratio.min(1e18) as u64)
+        grouped(ratio.min(1e18).round() as u64)
     }
 }
 
-fn shortened(name: &str) -> String {
-    if name.chars().count() <= NAME_WIDTH {
+fn shortened(name: &str, width: usize) -> String {
+    if name.chars().count() <= width {
         return name.to_owned();
     }
-    let kept: String = name.chars().take(NAME_WIDTH - 1).collect();
+    let kept: String = name.chars().take(width - 1).collect();
     format!("{kept}…")
 }

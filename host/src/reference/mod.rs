@@ -24,6 +24,7 @@
 mod angle;
 mod gamma;
 mod immittance;
+mod load;
 mod matrix;
 mod point;
 mod scattering;
@@ -34,6 +35,7 @@ pub use gamma::{
     return_loss_db, swr,
 };
 pub use immittance::IDEAL;
+pub use load::load_gamma;
 pub use matrix::Matrix;
 pub use point::{FrequencyPoint, Reference, input_gamma, input_impedance};
 pub use scattering::SParameters;

@@ -1,7 +1,7 @@
 //! Lines with a real characteristic impedance, with or without loss.
 
 use super::Step;
-use crate::angle::within_half_turn;
+use crate::angle;
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
 
@@ -28,10 +28,16 @@ impl<R: Real> Line<R> {
     ///
     /// Whole half turns are taken off γl first. They change the sign of the state, which no
     /// ratio of v and i shows, and keep both immittances finite: with |θ| ≤ π/2 the denominator
-    /// sinh²(αl/2) + cos²(θ/2) is at least 1/2.
+    /// sinh²(αl/2) + cos²(θ/2) is at least 1/2. Also says whether they were odd in number.
     #[inline]
-    pub(super) fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {
-        let half_angle = within_half_turn(frequency.hertz(), self.turns_per_hertz);
+    pub(super) fn at(&self, frequency: &Frequency<R>) -> (Step<Complex<R>>, bool) {
+        let turns = angle::turns(frequency.hertz(), self.turns_per_hertz);
+        let inverts = angle::is_odd_half_turn(turns, R::ANGLE_ROUNDING);
+        (self.tee(angle::within_half_turn(turns), frequency), inverts)
+    }
+
+    #[inline(always)]
+    fn tee(&self, half_angle: i64, frequency: &Frequency<R>) -> Step<Complex<R>> {
         let (sine, cosine) = R::sine_cosine(half_angle);
         let product = sine.times(cosine);
         if self.root_loss.is_zero() && self.linear_loss.is_zero() {

@@ -59,14 +59,20 @@ pub enum Step<Z> {
 }
 
 impl<R: Real> Stage<R> {
-    /// The stage at one frequency.
+    /// The stage at one frequency; a line but for the sign of the state.
     #[inline]
     pub fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {
+        self.resolve(frequency).0
+    }
+
+    /// The stage at one frequency and whether the state must change sign beside.
+    #[inline]
+    pub(crate) fn resolve(&self, frequency: &Frequency<R>) -> (Step<Complex<R>>, bool) {
         match self {
-            Self::Branch(branch) => branch.at(frequency),
+            Self::Branch(branch) => (branch.at(frequency), false),
             Self::Line(line) => line.at(frequency),
-            Self::Stub(stub) => stub.at(frequency),
-            Self::Transformer(transformer) => transformer.step(),
+            Self::Stub(stub) => (stub.at(frequency), false),
+            Self::Transformer(transformer) => (transformer.step(), false),
         }
     }
 }

@@ -2,7 +2,7 @@
 
 use super::line::half_loss;
 use super::{Position, Step};
-use crate::angle::within_half_turn;
+use crate::angle;
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
 
@@ -35,7 +35,8 @@ pub struct Stub<R> {
 impl<R: Real> Stub<R> {
     #[inline]
     pub(super) fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {
-        let half_angle = within_half_turn(frequency.hertz(), self.turns_per_hertz);
+        let turns = angle::turns(frequency.hertz(), self.turns_per_hertz);
+        let half_angle = angle::within_half_turn(turns);
         let (half_sine, half_cosine) = R::sine_cosine(half_angle);
         let sine = half_sine.times(half_cosine).times_power_of_two(1);
         let cosine = half_cosine
