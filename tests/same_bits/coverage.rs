@@ -21,18 +21,12 @@ fn points(lines: &[Line]) -> impl Iterator<Item = (u32, Gamma, Gamma)> {
             line.place.hertz,
             load,
             Gamma {
-                re: word(line, "Γ, re"),
-                im: word(line, "Γ, im"),
+                re: line.word("Γ, re"),
+                im: line.word("Γ, im"),
             },
         )),
         _ => None,
     })
-}
-
-/// The signed word of this name.
-fn word(line: &Line, name: &str) -> i32 {
-    let place = line.place.subject.names().iter().position(|it| *it == name);
-    line.words[place.expect("a word of this line")].cast_signed()
 }
 
 #[test]
@@ -130,10 +124,10 @@ fn every_kind_of_immittance_is_compared() {
             if !matches!(line.place.subject, Subject::Step(_)) {
                 continue;
             }
-            let kind = word(&line, "kind of the step");
+            let kind = line.word("kind of step");
             kinds.insert(kind);
             let [re, im, exponent] = ["re", "im", "exponent"]
-                .map(|part| word(&line, &format!("first immittance, {part}")));
+                .map(|part| line.word(&format!("first immittance, {part}")));
             if exponent == Immittance::<W>::EXPONENT_MAX - W::BITS as i32 {
                 largest.insert(kind);
             }

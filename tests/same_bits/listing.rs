@@ -5,7 +5,7 @@ use std::fmt;
 use stagebits_kernel::Gamma;
 
 use super::cases::Image;
-use crate::words::{Subject, evaluate};
+use crate::words::{Name, Subject, evaluate};
 
 /// Where a line of words belongs.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -28,6 +28,7 @@ impl fmt::Display for Place {
         match self.subject {
             Subject::Frequency => write!(f, ", {} Hz", self.hertz),
             Subject::Step(number) => write!(f, ", {} Hz, stage {}", self.hertz, number + 1),
+            Subject::Chain => write!(f, ", {} Hz, whatever the load", self.hertz),
             Subject::Point(Gamma { re, im }) => {
                 let (point, hertz) = (self.point, self.hertz);
                 write!(f, ", point {point}, {hertz} Hz, load {re} {im:+}j in 2^-30")
@@ -40,8 +41,19 @@ impl fmt::Display for Place {
 pub(crate) struct Line {
     /// Where it belongs.
     pub(crate) place: Place,
+    /// What the words are.
+    pub(crate) names: Vec<Name>,
     /// The words.
     pub(crate) words: Vec<u32>,
+}
+
+impl Line {
+    /// The signed word of this name.
+    pub(crate) fn word(&self, name: &str) -> i32 {
+        let is_it = |it: &Name| it.to_string() == name;
+        let index = self.names.iter().position(is_it);
+        self.words[index.unwrap_or_else(|| panic!("{name}: no word of this line"))].cast_signed()
+    }
 }
 
 /// The words of these images, evaluated here.
@@ -49,8 +61,7 @@ pub(crate) fn listing(images: &[Image]) -> Vec<Line> {
     let mut lines = Vec::new();
     for image in images {
         let mut point = 0;
-        let evaluated = evaluate(&image.bytes, image.band, |hertz, subject, words| {
-            assert_eq!(words.len(), subject.names().len());
+        let evaluated = evaluate(&image.bytes, image.band, |hertz, subject, record| {
             lines.push(Line {
                 place: Place {
                     chain: image.name.clone(),
@@ -59,7 +70,8 @@ pub(crate) fn listing(images: &[Image]) -> Vec<Line> {
                     subject,
                     point,
                 },
-                words: words.to_vec(),
+                names: record.names().to_vec(),
+                words: record.words().to_vec(),
             });
             point += usize::from(matches!(subject, Subject::Point(_)));
         });
@@ -85,7 +97,7 @@ pub(crate) enum Difference {
         /// Where.
         place: Place,
         /// What the word is.
-        name: &'static str,
+        name: Name,
         /// The desktop's.
         here: u32,
         /// The core's.
@@ -131,7 +143,12 @@ impl fmt::Display for Difference {
 pub(crate) fn compare(desktop: &[Line], printed: &str) -> Result<Extent, Box<Difference>> {
     let mut extent = Extent::default();
     let mut printed = printed.lines();
-    for Line { place, words } in desktop {
+    for Line {
+        place,
+        names,
+        words,
+    } in desktop
+    {
         let line = printed.next();
         let other_line = || Difference::Line {
             place: place.clone(),
@@ -141,12 +158,12 @@ pub(crate) fn compare(desktop: &[Line], printed: &str) -> Result<Extent, Box<Dif
         if there.len() != words.len() {
             return Err(other_line().into());
         }
-        for ((&here, there), name) in words.iter().zip(there).zip(place.subject.names()) {
+        for ((&here, there), name) in words.iter().zip(there).zip(names) {
             if here != there {
                 let place = place.clone();
                 return Err(Difference::Word {
                     place,
-                    name,
+                    name: *name,
                     here,
                     there,
                 }

@@ -39,7 +39,7 @@ fn main() -> ! {
         if file.read(image) < length {
             exit::failure("the file ends within an image");
         }
-        if evaluate(image, band, |_, _, words| console::line(words)).is_err() {
+        if evaluate(image, band, |_, _, record| console::line(record.words())).is_err() {
             exit::failure("an image is refused");
         }
     }
