@@ -108,27 +108,31 @@ fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) ->
     if up == 1 {
         let down = z.down();
         let low = product.map(|part| W::upper(part, 1) >> down);
-        let sum = [0, 1].map(|part| word[part] + round_half(low[part]));
+        let sum = zip(word, low, |word, low| word + round_half(low));
         if magnitude(sum[0]) | magnitude(sum[1]) < W::LIMIT {
             *target = sum.map(W::from_i32);
             return 0;
         }
         // floor of the sum and one place more: rounded once from the same exact sum
-        *target = [0, 1].map(|part| W::from_i32(round_half(word[part] + (low[part] >> 1))));
+        *target = zip(word, low, |word, low| {
+            W::from_i32(round_half(word + (low >> 1)))
+        });
         *other = other.map(|word| W::from_i32(round_half(word.to_i32())));
         return 1;
     }
     let twice = word.map(|word| word << 1);
-    let top = [0, 1].map(|part| magnitude((twice[part] >> up) + W::upper(product[part], 0)));
+    let top = zip(twice, product, |twice, product| {
+        magnitude((twice >> up) + W::upper(product, 0))
+    });
     if ((top[0] | top[1]) as u32 + 2) >> (W::BITS - 1 - up) == 0 {
-        *target = [0, 1].map(|part| {
-            W::from_i32(round_half(
-                twice[part].wrapping_add(W::upper(product[part], up)),
-            ))
+        *target = zip(twice, product, |twice, product| {
+            W::from_i32(round_half(twice.wrapping_add(W::upper(product, up))))
         });
         return 0;
     }
-    let sum = [0, 1].map(|part| target[part].raised(up - 1) + product[part]);
+    let sum = zip(*target, product, |word, product| {
+        word.raised(up - 1) + product
+    });
     let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
     // bits from the top of the sum to one below the word's last place
     let mut kept = up - 1;
@@ -139,6 +143,12 @@ fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) ->
     let grown = up - kept;
     *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
     grown
+}
+
+/// Joins two pairs part by part; without an index, which a build for size would check.
+#[inline(always)]
+fn zip<A, B, C>([a_re, a_im]: [A; 2], [b_re, b_im]: [B; 2], join: impl Fn(A, B) -> C) -> [C; 2] {
+    [join(a_re, b_re), join(a_im, b_im)]
 }
 
 /// x/2, rounded half up.
