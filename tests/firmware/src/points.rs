@@ -17,7 +17,8 @@ pub struct Band {
 
 /// What a caller may ask for outside every band; immittances saturate there.
 const EXTREME_FREQUENCIES: [u32; 3] = [0, 1, u32::MAX];
-const SPACED_FREQUENCIES: u64 = 10;
+/// Between the spaced frequencies, of which there is one more.
+const INTERVALS: u64 = 9;
 const RANDOM_FREQUENCIES: usize = 11;
 
 const ONE: i32 = 1 << Gamma::FRACTION_BITS;
@@ -64,8 +65,7 @@ const fn load(re: i32, im: i32) -> Gamma {
 /// Frequencies outside, spaced over both ends of and at random in a band.
 pub fn frequencies(band: Band) -> impl Iterator<Item = u32> {
     let span = u64::from(band.to - band.from);
-    let last = SPACED_FREQUENCIES - 1;
-    let spaced = (0..=last).map(move |index| band.from + (span * index / last) as u32);
+    let spaced = (0..=INTERVALS).map(move |index| band.from + (span * index / INTERVALS) as u32);
     let random = Stream(u64::from(band.from) << 32 | u64::from(band.to))
         .map(move |word| band.from + (((word >> 32) * (span + 1)) >> 32) as u32);
     EXTREME_FREQUENCIES
