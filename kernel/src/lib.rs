@@ -47,6 +47,7 @@ mod stage;
 mod state;
 #[cfg(test)]
 mod testing;
+mod two_port;
 mod walk;
 mod word;
 
@@ -59,8 +60,10 @@ pub use readout::{ChainMatrix, Decibels, Drive, Gamma, Moments, Scattering, Swr}
 pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{
-    Branch, Law, Line, LossyReactor, Position, Stage, Step, Stub, StubFunction, Transformer,
+    Branch, Law, Line, LossyReactor, Position, Stage, Step, StepForm, Stub, StubFunction,
+    Transformer,
 };
 pub use state::State;
+pub use two_port::{TwoPort, TwoPortWords};
 pub use walk::Walk;
 pub use word::{Bits, DoubleWord, Word, round_shift};
