@@ -18,8 +18,8 @@ pub struct Immittance<W> {
 }
 
 impl<W: Word> Immittance<W> {
-    /// Largest exponent: W − 2. Greater immittances count as 2^(W−4) in their own direction, an
-    /// open or short circuit to within what the word length can show: |ΔΓ| ≤ 2^(5−W).
+    /// Largest exponent: W − 2. Greater immittances count as 2^(W−4) in their own direction: an
+    /// open or short circuit to within |ΔΓ| = 2^(5−W), unless what lies behind resonates with them.
     pub const EXPONENT_MAX: i32 = W::BITS as i32 - 2;
 
     /// Smallest exponent: what lies below adds nothing to a state of W − 1 bits.

@@ -1,9 +1,6 @@
-//! Chains of two-ports in block fixed point.
+#![doc = include_str!("../README.md")]
 //!
-//! A chain of coils, capacitors, lines, stubs and transformers is walked from its load to its
-//! source in integers of a chosen word length, in a bounded number of instructions and without a
-//! heap, a panic or a floating-point unit. The same source gives the same bits on every core and
-//! on the desktop. The formats, the rounding and the headroom are in the crate's `README.md`.
+//! # Example
 //!
 //! ```
 //! use stagebits_kernel::{Chain, Frequency, Gamma, Scalar, State};
