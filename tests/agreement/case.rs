@@ -36,7 +36,7 @@ impl<W: Word> Case<W> {
                 stages: stages.to_vec(),
                 ..plan.clone()
             };
-            let constants = constants::exact(&part).expect("no more stages than a chain holds");
+            let constants = constants::exact(&part);
             stored.extend(constants::rounded(&constants, W::BITS).stages());
             let part = constants.stages().iter();
             uncertain.extend(part.map(|stage| stage.map(|c| Uncertain::constant(c, W::BITS))));

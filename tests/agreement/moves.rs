@@ -50,8 +50,13 @@ impl<W: Word> Factor<W> {
     ) -> Self {
         let unit = f64::from(words.exponent()).exp2();
         let half_unit = |part: Uncertain| if part.is_zero() { 0.0 } else { unit / 2.0 };
-        let rounding = half_unit(direct.re).hypot(half_unit(direct.im));
-        let limit = f64::from(Immittance::<W>::exponent_max() - 1).exp2();
+        let rounding = if words.words() == [0, 0] {
+            // too small for every state
+            exact.norm()
+        } else {
+            half_unit(direct.re).hypot(half_unit(direct.im))
+        };
+        let limit = f64::from(Immittance::<W>::EXPONENT_MAX - 2).exp2();
         let before = direct.re.error.hypot(direct.im.error);
         let error = if direct.re.magnitude().max(direct.im.magnitude()) < limit * 0.999 {
             rounding + before
@@ -62,7 +67,7 @@ impl<W: Word> Factor<W> {
             /// Reciprocal and product after the reciprocal was resolved: sixteen scalar roundings.
             const LAST: f64 = 16.0 / (1_u64 << 31) as f64;
             let word = value(&words).norm();
-            let largest = words.exponent() + W::BITS as i32 == Immittance::<W>::exponent_max();
+            let largest = words.exponent() + W::BITS as i32 == Immittance::<W>::EXPONENT_MAX;
             let own = if largest { 1.0 } else { rounding / word };
             let of_reciprocal = y.re.error.hypot(y.im.error) + (own + LAST) / word;
             exact.norm() * word * of_reciprocal

@@ -5,7 +5,7 @@
 //! have led to. What each operation adds is its own rounding; what it was given is carried on with
 //! the largest derivative over the range of its arguments.
 
-use stagebits_kernel::Real;
+use stagebits_kernel::{Real, Scalar};
 use std::f64::consts::{FRAC_PI_4, TAU};
 
 /// Half a unit of a scalar's last place over the scalar: what one operation adds at most.
@@ -71,6 +71,9 @@ impl Real for Uncertain {
         value: 1.0,
         error: 0.0,
     };
+
+    /// As of the kernel's scalar: what the angle is rounded to decides which half turn it is in.
+    const ANGLE_ROUNDING: u64 = Scalar::ANGLE_ROUNDING;
 
     fn from_hertz(hertz: u32) -> Self {
         let exact = hertz < 1 << 31;

@@ -2,14 +2,14 @@
 
 use num_complex::Complex;
 use proptest::prelude::*;
-use stagebits::arithmetic::{Arithmetic, Block, states, to_gamma};
+use stagebits::arithmetic::{Arithmetic, Block, state_values, states, to_gamma};
 use stagebits::constants::{self, CAPACITY};
 use stagebits::plan::Plan;
 use stagebits_kernel::{Bits, Gamma, Immittance, Resolved, State, Step, Word};
 
 use crate::bound::Trace;
 use crate::case::plan;
-use crate::moves::moves_of_words;
+use crate::moves::{Move, moves_of_words, value};
 use crate::strategies::{self, Dissipation};
 
 /// Four words of a state with its exponent.
@@ -19,7 +19,7 @@ type StateWords = ([i32; 2], [i32; 2], i32);
 type Everything = (Vec<Step<([i32; 2], i32)>>, Vec<StateWords>, Gamma);
 
 fn resolved<W: Word>(plan: &Plan, hertz: u32) -> Resolved<Immittance<W>, CAPACITY> {
-    Block::<W>::new(&constants::exact(plan).expect("few stages")).at(hertz)
+    Block::<W>::new(&constants::exact(plan)).at(hertz)
 }
 
 fn everything<W: Word>(plan: &Plan, hertz: u32, load: Gamma) -> Everything {
@@ -31,39 +31,49 @@ fn everything<W: Word>(plan: &Plan, hertz: u32, load: Gamma) -> Everything {
     (steps, states, gamma)
 }
 
+/// Largest part of what a move makes of a state, before any rounding.
+fn largest_part<W: Word>(step: &Move<W>, state: &State<W>) -> f64 {
+    let (mut v, mut i) = state_values(state);
+    match step {
+        Move::Series(z) => v += value(&z.words) * i,
+        Move::Shunt(y) => i += value(&y.words) * v,
+        Move::Stretch(ratio, inverse) => {
+            v *= value(&ratio.words);
+            i *= value(&inverse.words);
+        }
+    }
+    [v.re, v.im, i.re, i.im]
+        .into_iter()
+        .fold(0.0, |top, part| part.abs().max(top))
+}
+
 /// Every state of a walk, within a line's T, too.
 fn stays_in_the_window<W: Word>(
     plan: &Plan,
     hertz: u32,
     load: Complex<f64>,
 ) -> Result<(), TestCaseError> {
+    let in_window = |state: &State<W>| {
+        let (v, i, _) = state.words();
+        let mut words = v.into_iter().chain(i);
+        words.all(|word| (-W::LIMIT..W::LIMIT).contains(&word))
+    };
     let gamma = to_gamma(load);
     let mut trace = Trace::<W>::new(load, gamma);
-    let mut last = i32::MIN;
-    let mut check = |state: State<W>| {
-        let (v, i, exponent) = state.words();
-        let words = [v, i].concat();
-        let window = -W::LIMIT..W::LIMIT;
-        prop_assert!(
-            words.iter().all(|word| window.contains(word)),
-            "{} bits: {state:?}",
-            W::BITS
-        );
-        prop_assert!(exponent >= last, "{} bits: {state:?}", W::BITS);
-        // a block that has grown needed to, but for one place
-        let largest = words.iter().map(|word| word.abs()).max().unwrap_or(0);
-        prop_assert!(
-            exponent == last || largest >= W::LIMIT / 4 - 1,
-            "{} bits: {state:?} after exponent {last}",
-            W::BITS
-        );
-        last = exponent;
-        Ok(())
-    };
-    check(trace.words)?;
+    prop_assert!(in_window(&trace.words), "{:?}", trace.words);
     for step in moves_of_words(resolved::<W>(plan, hertz).steps()) {
+        let before = trace.words;
         trace.pass(&step);
-        check(trace.words)?;
+        let after = trace.words;
+        let context = || format!("{} bits: {before:?} {step:?} {after:?}", W::BITS);
+        prop_assert!(in_window(&after), "{}", context());
+
+        // the block grows until the largest part fits, or one place more
+        let (exponent, grown_to) = (before.words().2, after.words().2);
+        let largest = largest_part(&step, &before) / f64::from(W::LIMIT);
+        let needed = largest.log2().floor() as i32 + 1;
+        prop_assert!(exponent <= grown_to, "{}", context());
+        prop_assert!(grown_to <= exponent.max(needed) + 1, "{}", context());
     }
     Ok(())
 }
