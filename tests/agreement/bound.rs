@@ -3,8 +3,8 @@
 //!
 //! # Derivation
 //!
-//! Every stage acts on (v, i) by a matrix of determinant 1 (or −1 times that: a line may be walked
-//! a half turn off, which changes the sign of the whole state). So v̂·i − v·î, between a state of
+//! Every stage acts on (v, i) by a matrix of determinant 1. (A line in words may be a half turn off,
+//! which changes the sign of the whole state and nothing below.) So v̂·i − v·î, between a state of
 //! words (v̂, î) and the exact one (v, i), is the same on both sides of an exact stage. A stage in
 //! words leaves its result off by (δv, δi), and that adds δv·i − δi·v with the exact state at that
 //! place. Summed over the walk, with S = v + i,
