@@ -9,6 +9,13 @@ use super::cases::{Case, cases};
 use super::listing::{Line, listing};
 use crate::words::Subject;
 
+// The kinds of step as the words tell them.
+const SERIES: i32 = 0;
+const SHUNT: i32 = 1;
+const TEE: i32 = 2;
+const STRETCH: i32 = 3;
+const TWO_PORT: i32 = 4;
+
 /// The lines of a case for words of type `W`.
 fn lines<W: Word>(case: &Case) -> Vec<Line> {
     listing(&[case.image(W::BITS, |constant| constant)])
@@ -75,16 +82,17 @@ fn every_kind_of_stage_is_compared() {
     assert_eq!(terms, [true; 5], "terms of laws of frequency");
 }
 
+/// Whether a line or stub with these loss constants has a loss.
+fn loss(root: f64, linear: f64) -> &'static str {
+    if (root, linear) == (0.0, 0.0) {
+        "without loss"
+    } else {
+        "with loss"
+    }
+}
+
 /// What distinguishes a stage from others in what the kernel does with it.
 fn kind(stage: &Stage<f64>) -> String {
-    let loss = |root: f64, linear: f64| {
-        let with = if (root, linear) == (0.0, 0.0) {
-            "without"
-        } else {
-            "with"
-        };
-        format!("{with} loss")
-    };
     match stage {
         Stage::Branch(Branch {
             position,
@@ -114,34 +122,46 @@ fn kind(stage: &Stage<f64>) -> String {
     }
 }
 
-/// Every kind of step, each end of the immittances' exponents.
+/// Every kind of step, each kind that a line can be, and both ends of the immittances' exponents.
 #[test]
-fn every_kind_of_immittance_is_compared() {
+fn every_kind_of_step_is_compared() {
     fn check<W: Word>(cases: &[Case]) {
-        let mut kinds = BTreeSet::new();
-        let (mut largest, mut zero) = (HashSet::new(), HashSet::new());
-        for line in cases.iter().flat_map(lines::<W>) {
-            if !matches!(line.place.subject, Subject::Step(_)) {
-                continue;
-            }
-            let kind = line.word("kind of step");
-            kinds.insert(kind);
-            let [re, im, exponent] = ["re", "im", "exponent"]
-                .map(|part| line.word(&format!("first immittance, {part}")));
-            if exponent == Immittance::<W>::EXPONENT_MAX - W::BITS as i32 {
-                largest.insert(kind);
-            }
-            if (re, im) == (0, 0) {
-                zero.insert(kind);
+        let [mut kinds, mut largest, mut zero] = [(); 3].map(|()| BTreeSet::new());
+        let mut line_kinds = BTreeSet::new();
+        for case in cases {
+            let chain = case.exact();
+            for line in lines::<W>(case) {
+                let Subject::Step(number) = line.place.subject else {
+                    continue;
+                };
+                let kind = line.word("kind of step");
+                kinds.insert(kind);
+                if let Stage::Line(of) = &chain.stages()[number] {
+                    line_kinds.insert((kind, loss(of.root_loss, of.linear_loss)));
+                }
+                if kind == TWO_PORT {
+                    continue;
+                }
+                let [re, im, exponent] = ["re", "im", "exponent"]
+                    .map(|part| line.word(&format!("first immittance, {part}")));
+                if exponent == Immittance::<W>::EXPONENT_MAX - W::BITS as i32 {
+                    largest.insert(kind);
+                }
+                if (re, im) == (0, 0) {
+                    zero.insert(kind);
+                }
             }
         }
-        assert_eq!(kinds, BTreeSet::from([0, 1, 2, 3]), "{} bits", W::BITS);
-        for kind in [0, 1, 2] {
-            assert!(largest.contains(&kind), "{} bits, kind {kind}", W::BITS);
-        }
-        for kind in [0, 1] {
-            assert!(zero.contains(&kind), "{} bits, kind {kind}", W::BITS);
-        }
+        let bits = W::BITS;
+        let all = BTreeSet::from([SERIES, SHUNT, TEE, STRETCH, TWO_PORT]);
+        assert_eq!(kinds, all, "{bits} bits");
+        let both = |kind| [(kind, "without loss"), (kind, "with loss")];
+        let of_lines = BTreeSet::from_iter([both(TEE), both(TWO_PORT)].concat());
+        assert_eq!(line_kinds, of_lines, "{bits} bits");
+        let saturating = BTreeSet::from([SERIES, SHUNT, TEE]);
+        assert!(largest.is_superset(&saturating), "{bits} bits: {largest:?}");
+        let vanishing = BTreeSet::from([SERIES, SHUNT]);
+        assert!(zero.is_superset(&vanishing), "{bits} bits: {zero:?}");
     }
     let cases = cases();
     check::<i16>(&cases);

@@ -17,6 +17,9 @@ pub const CAPACITY: usize = 16;
 /// Forward power in milliwatts that voltages and currents are read for.
 const FORWARD_MILLIWATTS: u32 = 100_000;
 
+/// Name of the word that tells kinds of step apart.
+const KIND: &str = "kind of step";
+
 /// What a line of words is about.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Subject {
@@ -81,16 +84,27 @@ fn of_frequency(frequency: &Frequency<Scalar>) -> Record {
 
 fn of_step<W: Word>(step: &Step<Immittance<W>>) -> Record {
     let mut record = Record::new();
-    let (kind, first, second) = match step {
-        Step::Series(z) => (0, z, None),
-        Step::Shunt(y) => (1, y, None),
-        Step::Tee { series, shunt } => (2, series, Some(shunt)),
-        Step::Stretch { ratio, inverse } => (3, ratio, Some(inverse)),
+    let mut immittances = |kind, first, second: Option<&_>| {
+        record.word(KIND, kind);
+        record.immittance("first immittance", first);
+        if let Some(second) = second {
+            record.immittance("second immittance", second);
+        }
     };
-    record.word("kind of step", kind);
-    record.immittance("first immittance", first);
-    if let Some(second) = second {
-        record.immittance("second immittance", second);
+    match step {
+        Step::Series(z) => immittances(0, z, None),
+        Step::Shunt(y) => immittances(1, y, None),
+        Step::Tee { series, shunt } => immittances(2, series, Some(shunt)),
+        Step::Stretch { ratio, inverse } => immittances(3, ratio, Some(inverse)),
+        Step::TwoPort(two_port) => {
+            record.word(KIND, 4);
+            let [a, b, c, d] = two_port.words();
+            record.pair("a", a);
+            record.pair("b", b);
+            record.pair("c", c);
+            record.pair("d", d);
+            record.signed("exponent of the two-port", two_port.exponent());
+        }
     }
     record
 }
