@@ -192,7 +192,15 @@ pub(crate) fn lint(core: &Core) -> Result<(), Failure> {
         )));
     }
     let mut clippy = command(&compiler.clippy, "clippy", &compiler, core);
-    clippy.args(["--release", "--", "--deny", "warnings"]);
+    // Without the feature, images that need it would be left out.
+    clippy.args([
+        "--release",
+        "--features",
+        "float",
+        "--",
+        "--deny",
+        "warnings",
+    ]);
     output(&mut clippy)
         .map(drop)
         .map_err(|reason| Failure(format!("clippy on the images for {}: {reason}", core.name)))
