@@ -230,9 +230,10 @@ fn stub_constants(
     }
 }
 
-/// Electrical length in 2^-64 turns per hertz; a line of a second and more stops there.
+/// Electrical length in 2^-64 turns per hertz. Whole turns per hertz are whole turns at every whole
+/// frequency and are left out.
 fn turns_per_hertz(line: &Line) -> u64 {
-    (line.delay() * 64_f64.exp2()).round() as u64
+    (line.delay().fract() * 64_f64.exp2()).round() as u64
 }
 
 fn place(position: Position) -> kernel::Position {
