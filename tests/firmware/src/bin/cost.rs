@@ -81,7 +81,10 @@ fn products(matrices: &[Matrix; 7], load: C32) -> C32 {
     for next in &matrices[1..] {
         let [[a, b], [c, d]] = whole;
         let [[e, f], [g, h]] = *next;
-        whole = [[a * e + b * g, a * f + b * h], [c * e + d * g, c * f + d * h]];
+        whole = [
+            [a * e + b * g, a * f + b * h],
+            [c * e + d * g, c * f + d * h],
+        ];
     }
     let one = C32::new(1.0, 0.0);
     let (v, i) = (one + load, one - load);
@@ -128,7 +131,11 @@ fn fixed<W: Word>(bits: &str) {
     });
     spread(&concat(bits, "whole"), |hertz, load| {
         count::instructions(|| {
-            black_box(whole::<W>(black_box(&chain), black_box(hertz), black_box(load)));
+            black_box(whole::<W>(
+                black_box(&chain),
+                black_box(hertz),
+                black_box(load),
+            ));
         })
     });
 }
@@ -137,7 +144,10 @@ fn float() {
     let chain = chain(|x| x as f32);
     let to_float = |load: Gamma| {
         let unit = 1.0 / (1 << 30) as f32;
-        Complex { re: load.re as f32 * unit, im: load.im as f32 * unit }
+        Complex {
+            re: load.re as f32 * unit,
+            im: load.im as f32 * unit,
+        }
     };
     spread("f32 walk", |hertz, load| {
         let point = resolve_float(&chain, hertz);
@@ -161,7 +171,11 @@ fn float() {
     spread("f32 whole", |hertz, load| {
         let load = to_float(load);
         count::instructions(|| {
-            black_box(whole_float(black_box(&chain), black_box(hertz), black_box(load)));
+            black_box(whole_float(
+                black_box(&chain),
+                black_box(hertz),
+                black_box(load),
+            ));
         })
     });
 }
