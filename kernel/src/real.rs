@@ -43,6 +43,7 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
 
 /// A complex number.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Complex<R> {
     /// Real part.
     pub re: R,

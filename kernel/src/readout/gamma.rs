@@ -11,6 +11,7 @@ use crate::word::Word;
 /// Loads go in and results come out in this format, whatever the word length. Parts reach ±2, so
 /// that an active load is still a number.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Gamma {
     /// Real part in 2^-30.
     pub re: i32,

@@ -10,6 +10,7 @@ use crate::real::{Complex, Real};
 /// The loss of the whole length is 2·(root_loss·√f + linear_loss·f) nepers: the half is what both
 /// the line's T and the image need.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Line<R> {
     /// Characteristic impedance over R0.
     pub impedance: R,

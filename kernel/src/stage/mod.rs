@@ -15,6 +15,7 @@ use crate::real::{Complex, Real};
 
 /// Where a branch or a stub sits.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Position {
     /// In the through path: an impedance.
     Series,
@@ -24,6 +25,7 @@ pub enum Position {
 
 /// One two-port, as the constants that the image stores, normalised to R0.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Stage<R> {
     /// An immittance that is a law of frequency.
     Branch(Branch<R>),
@@ -37,6 +39,7 @@ pub enum Stage<R> {
 
 /// A stage at one frequency: what the walk multiplies by.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Step<Z> {
     /// v ← v + z·i
     Series(Z),
