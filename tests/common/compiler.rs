@@ -192,7 +192,8 @@ pub(crate) fn lint(core: &Core) -> Result<(), Failure> {
         )));
     }
     let mut clippy = command(&compiler.clippy, "clippy", &compiler, core);
-    clippy.args(["--release", "--", "--deny", "warnings"]);
+    clippy.args(["--release", "--features", "float,log"]);
+    clippy.args(["--", "--deny", "warnings"]);
     output(&mut clippy)
         .map(drop)
         .map_err(|reason| Failure(format!("clippy on the images for {}: {reason}", core.name)))

@@ -19,6 +19,7 @@ pub mod checksum;
 pub mod console;
 pub mod count;
 pub mod exit;
+pub mod logged;
 pub mod seven_stages;
 pub mod stack;
 
