@@ -36,6 +36,7 @@
 
 mod angle;
 mod chain;
+pub mod correction;
 #[cfg(feature = "float")]
 mod float;
 #[cfg(feature = "defmt")]

@@ -78,6 +78,30 @@ impl<R: Real> Complex<R> {
         }
     }
 
+    /// Difference.
+    #[inline]
+    pub(crate) fn minus(self, other: Self) -> Self {
+        Self {
+            re: self.re.minus(other.re),
+            im: self.im.minus(other.im),
+        }
+    }
+
+    /// Product.
+    #[inline]
+    pub(crate) fn times(self, other: Self) -> Self {
+        Self {
+            re: self.re.times(other.re).minus(self.im.times(other.im)),
+            im: self.re.times(other.im).plus(self.im.times(other.re)),
+        }
+    }
+
+    /// Whether both parts are zero.
+    #[inline]
+    pub(crate) fn is_zero(self) -> bool {
+        self.re.is_zero() && self.im.is_zero()
+    }
+
     /// Product with a real number.
     #[inline]
     pub(crate) fn scaled(self, factor: R) -> Self {
