@@ -5,7 +5,7 @@ use std::fs;
 
 use defmt_decoder::{DecodeError, Table};
 use stagebits_kernel::{
-    Chain, Complex, Frequency, Gamma, Immittance, Resolved, Scalar, State, Word, image,
+    Chain, Complex, Frequency, Gamma, Immittance, Resolved, Scalar, State, Step, Word, image,
 };
 
 #[path = "common/emulator.rs"]
@@ -25,16 +25,6 @@ mod seven_stages;
 
 use emulator::{CORES, Failure};
 
-/// Text in place of a value, so that what holds the value can be shown by its `Debug`.
-#[derive(Clone)]
-struct Text(String);
-
-impl Debug for Text {
-    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        f.write_str(&self.0)
-    }
-}
-
 /// A scalar to be shown as mantissa and exponent.
 #[derive(Clone, Copy)]
 struct Mantissa(Scalar);
@@ -45,16 +35,39 @@ impl Debug for Mantissa {
     }
 }
 
-fn immittance<W: Word>(z: Immittance<W>) -> Text {
-    let [re, im] = z.words();
-    Text(format!("({re}, {im})·2^{}", z.exponent()))
+fn pair([re, im]: [i32; 2]) -> String {
+    format!("({re}, {im})")
+}
+
+fn immittance<W: Word>(z: &Immittance<W>) -> String {
+    format!("{}·2^{}", pair(z.words()), z.exponent())
+}
+
+fn step<W: Word>(step: &Step<Immittance<W>>) -> String {
+    match step {
+        Step::Series(z) => format!("Series({})", immittance(z)),
+        Step::Shunt(y) => format!("Shunt({})", immittance(y)),
+        Step::Tee { series, shunt } => {
+            let (series, shunt) = (immittance(series), immittance(shunt));
+            format!("Tee {{ series: {series}, shunt: {shunt} }}")
+        }
+        Step::Stretch { ratio, inverse } => {
+            let (ratio, inverse) = (immittance(ratio), immittance(inverse));
+            format!("Stretch {{ ratio: {ratio}, inverse: {inverse} }}")
+        }
+        Step::TwoPort(two_port) => {
+            let [a, b, c, d] = two_port.words().map(pair);
+            let exponent = two_port.exponent();
+            format!("TwoPort(a = {a}, b = {b}, c = {c}, d = {d}, ·2^{exponent})")
+        }
+    }
 }
 
 fn resolved<W: Word>(point: &Resolved<Immittance<W>, 7>) -> String {
-    let steps = point.steps().iter();
-    let steps: Vec<_> = steps.map(|step| step.map(immittance)).collect();
+    let steps: Vec<_> = point.steps().iter().map(step).collect();
     format!(
-        "Resolved {{ steps: {steps:?}, inverted: {} }}",
+        "Resolved {{ steps: [{}], inverted: {} }}",
+        steps.join(", "),
         point.inverted()
     )
 }
@@ -63,7 +76,7 @@ fn resolved<W: Word>(point: &Resolved<Immittance<W>, 7>) -> String {
 fn point<W: Word>(chain: &Chain<Scalar, 7>, hertz: u32, load: Gamma) -> [String; 5] {
     let point = chain.at::<W>(&Frequency::new(hertz));
     let input = point.walk(State::from_load(load));
-    let ([v_re, v_im], [i_re, i_im], exponent) = input.words();
+    let (v, i, exponent) = input.words();
     let moments = input.moments();
     let impedance: Complex<_> = moments.impedance().map(Mantissa);
     let (swr, loss) = (moments.swr().bits(), moments.return_loss().bits());
@@ -73,7 +86,7 @@ fn point<W: Word>(chain: &Chain<Scalar, 7>, hertz: u32, load: Gamma) -> [String;
             W::BITS
         ),
         format!("point {}", resolved(&point)),
-        format!("input v = ({v_re}, {v_im}), i = ({i_re}, {i_im}), ·2^{exponent}"),
+        format!("input v = {}, i = {}, ·2^{exponent}", pair(v), pair(i)),
         format!("reflection {:?}, {swr}·2^-16", moments.gamma()),
         format!("impedance {impedance:?}, return loss {loss}·2^-16 dB"),
     ]

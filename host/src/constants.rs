@@ -194,8 +194,8 @@ fn line_constants(line: &Line, reference: f64) -> kernel::Line<f64> {
         impedance: line.impedance / reference,
         admittance: reference / line.impedance,
         turns_per_hertz: turns_per_hertz(line),
-        root_loss: line.k1 * line.length / 2.0,
-        linear_loss: line.k2 * line.length / 2.0,
+        root_loss: line.k1 * line.length,
+        linear_loss: line.k2 * line.length,
     }
 }
 

@@ -5,7 +5,7 @@ use heapless::Vec;
 use crate::frequency::Frequency;
 use crate::real::Complex;
 use crate::scalar::Scalar;
-use crate::stage::{Stage, Step};
+use crate::stage::{Stage, Step, StepForm};
 use crate::walk::Walk;
 
 /// Up to `N` stages, the first at the source and the last at the load.
@@ -58,23 +58,23 @@ impl<const N: usize> Chain<Scalar, N> {
         &self,
         frequency: &Frequency<Scalar>,
     ) -> Resolved<crate::Immittance<W>, N> {
-        self.resolve(frequency, crate::Immittance::from_scalars)
+        self.resolve(frequency, Step::to_words)
     }
 }
 
 impl<R: crate::Real, const N: usize> Chain<R, N> {
     #[inline]
-    pub(crate) fn resolve<Z>(
+    pub(crate) fn resolve<Z: StepForm>(
         &self,
         frequency: &Frequency<R>,
-        convert: impl Fn(Complex<R>) -> Z,
+        convert: impl Fn(Step<Complex<R>>) -> Step<Z>,
     ) -> Resolved<Z, N> {
         let mut steps = Vec::new();
         let mut inverted = false;
         for stage in &self.stages {
             let (step, inverts) = stage.resolve(frequency);
             // both have capacity N, so that no stage is left out
-            let _ = steps.push(step.map(&convert));
+            let _ = steps.push(convert(step));
             inverted ^= inverts;
         }
         Resolved { steps, inverted }
@@ -83,13 +83,12 @@ impl<R: crate::Real, const N: usize> Chain<R, N> {
 
 /// A chain at one frequency.
 #[derive(Clone, PartialEq, Debug)]
-#[cfg_attr(feature = "defmt", derive(defmt::Format))]
-pub struct Resolved<Z, const N: usize> {
+pub struct Resolved<Z: StepForm, const N: usize> {
     steps: Vec<Step<Z>, N>,
     inverted: bool,
 }
 
-impl<Z, const N: usize> Resolved<Z, N> {
+impl<Z: StepForm, const N: usize> Resolved<Z, N> {
     /// The steps, from the source to the load.
     pub fn steps(&self) -> &[Step<Z>] {
         &self.steps

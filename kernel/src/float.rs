@@ -6,15 +6,14 @@
 use crate::chain::{Chain, Resolved};
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
+use crate::two_port::TwoPort;
 use crate::walk::Walk;
 
 macro_rules! real {
-    ($float:ty, $sqrt:path, $sin:path, $cos:path, $sinh:path, $cosh:path, $scalbn:path, $pi_4:expr) => {
+    ($float:ty, $sqrt:path, $sin:path, $cos:path, $sinh:path, $cosh:path, $scalbn:path, $pi_2:expr) => {
         impl Real for $float {
             const ZERO: Self = 0.0;
             const ONE: Self = 1.0;
-            // an angle that rounds to a quarter turn stays one
-            const ANGLE_ROUNDING: u64 = 0;
             #[inline]
             fn from_hertz(hertz: u32) -> Self {
                 hertz as $float
@@ -48,10 +47,14 @@ macro_rules! real {
                 if self > 0.0 { $sqrt(self) } else { 0.0 }
             }
             #[inline]
-            fn sine_cosine(half_angle: i64) -> (Self, Self) {
+            fn sine_cosine(angle: i64) -> (Self, Self) {
                 // 2^63, exact in either type
-                let angle = half_angle as $float * ($pi_4 / 9_223_372_036_854_775_808.0);
-                ($sin(angle), $cos(angle))
+                let angle = angle as $float * ($pi_2 / 9_223_372_036_854_775_808.0);
+                ($sin(angle), $cos(angle).max(0.0))
+            }
+            #[inline]
+            fn is_near_one(self) -> bool {
+                (0.5..2.0).contains(&self)
             }
             #[inline]
             fn hyperbolic(self) -> (Self, Self) {
@@ -73,7 +76,7 @@ real!(
     libm::sinhf,
     libm::coshf,
     libm::scalbnf,
-    core::f32::consts::FRAC_PI_4
+    core::f32::consts::FRAC_PI_2
 );
 real!(
     f64,
@@ -83,7 +86,7 @@ real!(
     libm::sinh,
     libm::cosh,
     libm::scalbn,
-    core::f64::consts::FRAC_PI_4
+    core::f64::consts::FRAC_PI_2
 );
 
 /// Voltage v and current R0·i in floating point.
@@ -157,6 +160,21 @@ impl<R: Real> Walk<Complex<R>> for FloatState<R> {
         self.i = self.i.scaled(inverse.re);
     }
     #[inline]
+    fn two_port(&mut self, two_port: &TwoPort<R>) {
+        let TwoPort { a, b, c, d } = *two_port;
+        let (v, i) = (self.v, self.i);
+        self.v = times(a, v).plus(times(b, i));
+        self.i = times(c, v).plus(times(d, i));
+    }
+    #[inline]
+    fn adjugate(two_port: &TwoPort<R>) -> TwoPort<R> {
+        two_port.adjugate()
+    }
+    #[inline]
+    fn turned(two_port: &TwoPort<R>) -> TwoPort<R> {
+        two_port.turned()
+    }
+    #[inline]
     fn negated(z: &Complex<R>) -> Complex<R> {
         Complex {
             re: z.re.negated(),
@@ -169,6 +187,6 @@ impl<R: Real, const N: usize> Chain<R, N> {
     /// The chain at one frequency in floating point.
     #[inline]
     pub fn at_float(&self, frequency: &Frequency<R>) -> Resolved<Complex<R>, N> {
-        self.resolve(frequency, |z| z)
+        self.resolve(frequency, |step| step)
     }
 }

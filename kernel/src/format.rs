@@ -4,7 +4,10 @@
 
 use defmt::{Format, Formatter, write};
 
-use crate::{Bits, Decibels, Frequency, Immittance, Real, Scalar, State, Swr, Word};
+use crate::{
+    Bits, Decibels, Frequency, Immittance, Real, Resolved, Scalar, State, Step, StepForm, Swr,
+    TwoPortWords, Word,
+};
 
 /// As `mantissa·2^exponent`.
 impl Format for Scalar {
@@ -29,6 +32,55 @@ impl<W: Word> Format for State<W> {
             f,
             "v = ({=i32}, {=i32}), i = ({=i32}, {=i32}), ·2^{=i32}",
             v_re, v_im, i_re, i_im, exponent
+        );
+    }
+}
+
+/// As `a = (re, im), b = (re, im), c = (re, im), d = (re, im), ·2^exponent`, all parts words.
+impl<W: Word> Format for TwoPortWords<W> {
+    fn format(&self, f: Formatter<'_>) {
+        let [a, b, c, d] = self.words();
+        write!(
+            f,
+            "a = ({=i32}, {=i32}), b = ({=i32}, {=i32}), c = ({=i32}, {=i32}), d = ({=i32}, {=i32}), ·2^{=i32}",
+            a[0],
+            a[1],
+            b[0],
+            b[1],
+            c[0],
+            c[1],
+            d[0],
+            d[1],
+            self.exponent()
+        );
+    }
+}
+
+/// As derived; a derive would not know that both kinds of entries have a format.
+impl<Z: StepForm<TwoPort: Format> + Format> Format for Step<Z> {
+    fn format(&self, f: Formatter<'_>) {
+        match self {
+            Self::Series(z) => write!(f, "Series({})", z),
+            Self::Shunt(y) => write!(f, "Shunt({})", y),
+            Self::Tee { series, shunt } => {
+                write!(f, "Tee {{ series: {}, shunt: {} }}", series, shunt)
+            }
+            Self::Stretch { ratio, inverse } => {
+                write!(f, "Stretch {{ ratio: {}, inverse: {} }}", ratio, inverse)
+            }
+            Self::TwoPort(two_port) => write!(f, "TwoPort({})", two_port),
+        }
+    }
+}
+
+/// As derived.
+impl<Z: StepForm<TwoPort: Format> + Format, const N: usize> Format for Resolved<Z, N> {
+    fn format(&self, f: Formatter<'_>) {
+        let (steps, inverted) = (self.steps(), self.inverted());
+        write!(
+            f,
+            "Resolved {{ steps: {=[?]}, inverted: {=bool} }}",
+            steps, inverted
         );
     }
 }

@@ -1,9 +1,6 @@
-//! Chains of two-ports in block fixed point.
+#![doc = include_str!("../README.md")]
 //!
-//! A chain of coils, capacitors, lines, stubs and transformers is walked from its load to its
-//! source in integers of a chosen word length, in a bounded number of instructions and without a
-//! heap, a panic or a floating-point unit. The same source gives the same bits on every core and
-//! on the desktop. The formats, the rounding and the headroom are in the crate's `README.md`.
+//! # Example
 //!
 //! ```
 //! use stagebits_kernel::{Chain, Frequency, Gamma, Scalar, State};
@@ -54,6 +51,7 @@ mod stage;
 mod state;
 #[cfg(test)]
 mod testing;
+mod two_port;
 mod walk;
 mod word;
 
@@ -66,8 +64,10 @@ pub use readout::{ChainMatrix, Decibels, Drive, Gamma, Moments, Scattering, Swr}
 pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{
-    Branch, Law, Line, LossyReactor, Position, Stage, Step, Stub, StubFunction, Transformer,
+    Branch, Law, Line, LossyReactor, Position, Stage, Step, StepForm, Stub, StubFunction,
+    Transformer,
 };
 pub use state::State;
+pub use two_port::{TwoPort, TwoPortWords};
 pub use walk::Walk;
 pub use word::{Bits, DoubleWord, Word, round_shift};

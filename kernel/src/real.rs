@@ -25,15 +25,14 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
     fn reciprocal(self) -> Self;
     /// √x; zero where x < 0.
     fn square_root(self) -> Self;
-    /// Half a unit of the angle that [`Real::sine_cosine`] rounds to, in 2^-64 turns of the whole
-    /// angle; 0 where a quarter turn less the least bit does not become one.
-    const ANGLE_ROUNDING: u64;
-    /// Sine and cosine of half_angle · π/4 / 2^63, an angle within ±π/4.
-    fn sine_cosine(half_angle: i64) -> (Self, Self);
+    /// Sine and cosine of angle · π/2 / 2^63, an angle within ±π/2; the cosine is not negative.
+    fn sine_cosine(angle: i64) -> (Self, Self);
     /// Hyperbolic sine and cosine of x ≥ 0.
     fn hyperbolic(self) -> (Self, Self);
     /// Whether the number is zero.
     fn is_zero(self) -> bool;
+    /// Whether 1/2 ≤ x < 2.
+    fn is_near_one(self) -> bool;
     /// Difference.
     #[inline(always)]
     fn minus(self, other: Self) -> Self {

@@ -66,7 +66,7 @@ macro_rules! refused {
 refused! {
     unknown_key: "swr_up_to" => "swr_upto",
         "6:1: unknown key `swr_upto` in [load]",
-        "did you mean `swr_up_to`? [load] takes `swr_up_to`, `impedances`";
+        "did you mean `swr_up_to`? [load] takes `swr_up_to`, `impedances`, `one_port`, `series`";
     wrong_dimension: "220 pF" => "5 ohm",
         r#"10:25: "5 ohm" is a resistance; a capacitance is wanted"#,
         r#"write a capacitance, such as "100 pF""#;
@@ -156,7 +156,7 @@ fn larger_than_any_chain_file() {
     refused(
         CHAIN.repeat(10_000),
         " the file is larger than 1048576 bytes",
-        "give a chain file in TOML",
+        "give the path of a readable chain file",
     );
 }
 

@@ -26,9 +26,10 @@
 //! most 48·2^-30 in each standard, were every rounding at its worst and in the same direction;
 //! the most seen in three million instruments and standards at random was 5·2^-30.
 //!
-//! A correction is no [`Stage`](crate::Stage): of e10 and e01 only the product is known, and with
-//! it the ratio of the waves but not their size, which powers and stresses of a chain are read
-//! from. It stands before a walk:
+//! # In a walk
+//! [`Correction::step`] is the instrument as a two-port between a chain and its readings. Of e10 and
+//! e01 only the product is known, and with it the ratio of the waves but not their size: what a walk
+//! through this step says of powers and stresses is without meaning.
 //!
 //! ```
 //! use stagebits_kernel::correction::{Correction, Standard};
@@ -43,7 +44,7 @@
 //! let correction = Correction::from_standards(&standards).unwrap();
 //! assert_eq!(correction.directivity.re, Scalar::ONE.scaled(-6));
 //!
-//! // to what stands behind the chain that the instrument is connected to, here an empty one
+//! // the load of a chain, here an empty one, from the reading at its other end
 //! let chain = Chain::<Scalar, 1>::new(&[]).unwrap();
 //! let point = chain.at::<i32>(&Frequency::new(7_000_000));
 //! let input = correction.apply(reading(Gamma { re: 0, im: 1 << 29 }));
@@ -57,9 +58,13 @@ mod tests;
 
 pub use error::CorrectionError;
 
+use crate::immittance::Immittance;
 use crate::readout::Gamma;
 use crate::real::{Complex, Real};
 use crate::scalar::Scalar;
+use crate::stage::Step;
+use crate::two_port::TwoPort;
+use crate::word::Word;
 
 /// A calibration standard at one frequency.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -131,6 +136,34 @@ impl Correction {
         } else {
             Err(CorrectionError::NoInstrument)
         }
+    }
+
+    /// The instrument as a step from what it is connected to, its load side, to what it reads.
+    ///
+    /// [`Walk::pass`](crate::Walk::pass) goes from a state to that of its reading and
+    /// [`Walk::pass_back`](crate::Walk::pass_back) from a reading's state to the one that has it,
+    /// both but for a factor. With W-bit words Γ is right to a few units of 2^(3−W), over
+    /// |e10e01| on the way back; [`Correction::apply`] is as good as its 30 bits.
+    ///
+    /// With the waves a = v + i and b = v − i, a ← a − e11·b and
+    /// b ← e00·a + (e10e01 − e00·e11)·b.
+    #[inline]
+    pub fn step<W: Word>(&self) -> Step<Immittance<W>> {
+        let Self {
+            directivity,
+            tracking,
+            source_match,
+        } = *self;
+        let through = tracking.minus(directivity.times(source_match));
+        let (sum, difference) = (ONE.plus(directivity), ONE.minus(directivity));
+        let (more, less) = (through.minus(source_match), through.plus(source_match));
+        Step::TwoPort(TwoPort {
+            a: sum.plus(more),
+            b: sum.minus(more),
+            c: difference.minus(less),
+            d: difference.plus(less),
+        })
+        .to_words()
     }
 
     /// Whether every |Γ| ≤ 1 has a reading, a matched load one within ±2, and no two the same.

@@ -5,9 +5,9 @@ use proptest::prelude::*;
 
 use super::{Correction, CorrectionError, Standard};
 use crate::readout::Gamma;
-use crate::testing::circuit::{gamma, gamma_value};
+use crate::testing::circuit::{Node, gamma, gamma_value, norm, pair};
 use crate::testing::{scalar, value};
-use crate::{Complex, Scalar};
+use crate::{Bits, Complex, Scalar, State, Walk, Word};
 
 const ONE: Complex64 = Complex64::new(1.0, 0.0);
 /// Last place of a [`Gamma`].
@@ -89,6 +89,51 @@ impl Terms {
             reflection,
             reading: gamma(self.predict(gamma_value(reflection))),
         }
+    }
+}
+
+/// The step both ways against v ← a·v + b·i, i ← c·v + d·i with entries in `f64`.
+///
+/// Entries are right to half a unit of at most 2^(3−W) of the largest, in eight parts. The load's
+/// words and the rounding of the result are as in [`Circuit`](crate::testing::circuit::Circuit).
+fn check_step<W: Word>(correction: &Correction, at: Gamma) {
+    let terms = Terms::of(correction);
+    let (e00, e11) = (terms.directivity, terms.source_match);
+    let through = terms.tracking - e00 * e11;
+    let [a, b] = [1.0, -1.0].map(|sign| ONE + e00 + (through - e11) * sign);
+    let [c, d] = [-1.0, 1.0].map(|sign| ONE - e00 + (through + e11) * sign);
+    let step = correction.step::<W>();
+    let reading = terms.measure(at).reading;
+    let mut there = State::<W>::from_load(at);
+    there.pass(&step);
+    let mut back = State::<W>::from_load(reading);
+    back.pass_back(&step);
+    for (state, load, [a, b, c, d], exact) in [
+        (there, at, [a, b, c, d], terms.predict(gamma_value(at))),
+        (
+            back,
+            reading,
+            [d, -b, -c, a],
+            terms.apply(gamma_value(reading)),
+        ),
+    ] {
+        let [v, i] = pair(load);
+        let output = [a * v + b * i, c * v + d * i];
+        let size = [a, b, c, d]
+            .iter()
+            .map(Complex64::norm_sqr)
+            .sum::<f64>()
+            .sqrt();
+        let (before, after) = (norm([v, i]), norm(output));
+        let rounded = (8.0 + 4.0 * 8.0_f64.sqrt()) * size * before + 16.0 * before.max(after);
+        let node = Node {
+            pair: output,
+            error: rounded * 2.0_f64.powi(-(W::BITS as i32)),
+        };
+        let (expected, limit) = node.gamma();
+        assert!((expected - exact).norm() <= 1e-12, "{expected} {exact}");
+        let error = (gamma_value(state.gamma()) - exact).norm();
+        assert!(error <= limit, "{} bits: {error:e} {limit:e}", W::BITS);
     }
 }
 
@@ -248,6 +293,16 @@ proptest! {
         let error = gamma_value(correction.apply(correction.predict(at))) - gamma_value(at);
         let limit = limit * terms.sensitivity(gamma_value(at)) + 6.0 * UNIT;
         prop_assert!(error.norm() <= limit, "{error}");
+    }
+
+    #[test]
+    fn a_step_predicts_and_corrects(terms in terms(), at in disc(1.0)) {
+        let at = gamma(at);
+        prop_assume!(in_range(&terms, at));
+        let correction = terms.correction();
+        check_step::<i16>(&correction, at);
+        check_step::<Bits<24>>(&correction, at);
+        check_step::<i32>(&correction, at);
     }
 
     /// From the readings of an instrument to what it is connected to, against what that is.

@@ -8,7 +8,8 @@ use core::hint::black_box;
 use stagebits_firmware::seven_stages::{chain, scalar};
 use stagebits_firmware::{console, count, entry, exit, print};
 use stagebits_kernel::{
-    Chain, Complex, FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State, Step, Word,
+    Chain, Complex, FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State, Step,
+    TwoPort, Walk, Word,
 };
 
 /// Frequencies and loads that spreads are taken over.
@@ -72,6 +73,7 @@ fn matrix(step: &Step<Complex<f32>>) -> Matrix {
             [[a, z * (one + a)], [y, a]]
         }
         Step::Stretch { ratio, inverse } => [[c(ratio), zero], [zero, c(inverse)]],
+        Step::TwoPort(TwoPort { a, b, c: y, d }) => [[c(a), c(b)], [c(y), c(d)]],
     }
 }
 
@@ -118,6 +120,27 @@ fn fixed<W: Word>(bits: &str) {
             black_box(walk(black_box(&point), black_box(load)));
         })
     });
+    for (index, step) in resolve::<W>(&chain, FREQUENCIES[2])
+        .steps()
+        .iter()
+        .enumerate()
+    {
+        let mut state = State::<W>::from_load(Gamma {
+            re: 1 << 28,
+            im: -(1 << 29),
+        });
+        let count = count::instructions(|| black_box(&mut state).pass(black_box(step)));
+        print!("{bits} step-{index} {count}\n");
+    }
+    print!(
+        "{bits} load {}\n",
+        count::instructions(|| {
+            black_box(State::<W>::from_load(black_box(Gamma {
+                re: 1 << 28,
+                im: -(1 << 29),
+            })));
+        })
+    );
     spread(&concat(bits, "resolve"), |hertz, _| {
         count::instructions(|| {
             black_box(resolve::<W>(black_box(&chain), black_box(hertz)));
