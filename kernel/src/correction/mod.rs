@@ -142,8 +142,8 @@ impl Correction {
     ///
     /// [`Walk::pass`](crate::Walk::pass) goes from a state to that of its reading and
     /// [`Walk::pass_back`](crate::Walk::pass_back) from a reading's state to the one that has it,
-    /// both but for a factor. With W-bit words Γ is right to a few units of 2^(3−W), over
-    /// |e10e01| on the way back; [`Correction::apply`] is as good as its 30 bits.
+    /// both but for a factor. Words of W bits leave an error of about 2^(5−W) in Γ, over |e10e01| on
+    /// the way back; [`Correction::predict`] and [`Correction::apply`] have that of 30 bits.
     ///
     /// With the waves a = v + i and b = v − i, a ← a − e11·b and
     /// b ← e00·a + (e10e01 − e00·e11)·b.
