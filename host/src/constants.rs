@@ -17,7 +17,8 @@ pub const CAPACITY: usize = crate::plan::STAGE_CAPACITY;
 /// The chain with its constants in `f64`.
 ///
 /// # Panics
-/// If the plan has more stages than [`CAPACITY`]; the chain file reader lets none through.
+/// If the plan has more stages than [`CAPACITY`], or a parallel branch whose coil and capacitor
+/// both have a constant series resistance; the chain file reader lets neither through.
 pub fn exact(plan: &Plan) -> Chain<f64, CAPACITY> {
     let reference = plan.reference;
     let stages: Vec<_> = plan
@@ -163,6 +164,10 @@ fn admittance_law(branch: &Branch, reference: f64) -> (Law<f64>, Option<LossyRea
     if let Some(capacitor) = branch.capacitor {
         let susceptance = TAU * capacitor.value * reference;
         if let Loss::Esr(ohms) = capacitor.loss {
+            assert!(
+                beside.is_none(),
+                "a parallel branch holds one element with a constant series resistance"
+            );
             let (resistance, reactance) = (ohms / reference, -1.0 / susceptance);
             beside = Some(LossyReactor {
                 resistance,

@@ -98,24 +98,12 @@ impl<W: Word> State<W> {
     #[inline]
     pub(crate) fn two_port(&mut self, two_port: &TwoPortWords<W>) {
         let TwoPortWords { a, b, c, d, .. } = two_port;
-        let (v, i) = (self.v, self.i);
-        let sums = if two_port.is_lossless() {
-            let row = |real: W, v: [W; 2], imaginary: W, i: [W; 2]| {
-                let ([v_re, v_im], [i_re, i_im]) = (v, i);
-                [
-                    real.times(v_re) + minus(imaginary).times(i_im),
-                    real.times(v_im) + imaginary.times(i_re),
-                ]
-            };
-            [row(a[0], v, b[1], i), row(d[0], i, c[1], v)]
+        let (v, i) = (&self.v, &self.i);
+        let ([v_re, v_im], [i_re, i_im]) = if two_port.is_lossless() {
+            (real_row(a, v, b, i), real_row(d, i, c, v))
         } else {
-            let row = |a, v, b, i| {
-                let ([re, im], [more_re, more_im]) = (times(a, v), times(b, i));
-                [re + more_re, im + more_im]
-            };
-            [row(*a, v, *b, i), row(*c, v, *d, i)]
+            (row(a, v, b, i), row(d, i, c, v))
         };
-        let [[v_re, v_im], [i_re, i_im]] = sums;
         let up = two_port.up();
         let top = magnitude(W::upper(v_re, 0))
             | magnitude(W::upper(v_im, 0))
@@ -183,13 +171,40 @@ fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) ->
     grown
 }
 
+/// a·x + b·y. Apart where registers are few: one row's sums fill those of ARMv6-M.
+#[cfg_attr(short_products, inline(never))]
+#[cfg_attr(not(short_products), inline(always))]
+fn row<W: Word>(a: &[W; 2], x: &[W; 2], b: &[W; 2], y: &[W; 2]) -> [W::Double; 2] {
+    let ([re, im], [more_re, more_im]) = (times(*a, *x), times(*b, *y));
+    [re + more_re, im + more_im]
+}
+
+/// a·x + b·y with a real and b imaginary.
+#[cfg_attr(short_products, inline(never))]
+#[cfg_attr(not(short_products), inline(always))]
+fn real_row<W: Word>(
+    [a, _]: &[W; 2],
+    [re, im]: &[W; 2],
+    [_, b]: &[W; 2],
+    [other_re, other_im]: &[W; 2],
+) -> [W::Double; 2] {
+    [
+        a.times(*re) + minus(*b).times(*other_im),
+        a.times(*im) + b.times(*other_re),
+    ]
+}
+
 /// The most bits, up to `up`, that sums may be taken at below their upper halves so that half of
 /// what is taken, rounded, is a word of the state. `top` has the bits of all upper halves.
 #[inline(always)]
 fn room<W: Word>(top: i32, up: u32) -> u32 {
-    // one more than the bits that the upper halves need beside their sign
-    let bits = 32 - (top + 1).leading_zeros();
-    up.min(W::BITS - 1 - bits)
+    let room = |kept: u32| (top as u32 + 1) >> (W::BITS - 1 - kept) == 0;
+    // seldom more than one or two: a count of leading zeros costs more where it is a call
+    let mut kept = up;
+    while kept > 0 && !room(kept) {
+        kept -= 1;
+    }
+    kept
 }
 
 /// x/2, rounded half up.

@@ -117,6 +117,19 @@ impl<W: Word> Trace<W> {
                     rounding + inverse.error * i.norm(),
                 );
             }
+            Move::TwoPort(matrix) => {
+                let [a, b, c, d] = matrix.exact;
+                let exact = self.exact;
+                self.exact.v = a * exact.v + b * exact.i;
+                self.exact.i = c * exact.v + d * exact.i;
+                self.words.two_port(&matrix.words);
+                let rounding = self.rounding();
+                let [of_a, of_b, of_c, of_d] = matrix.errors;
+                self.add(
+                    rounding + of_a * v.norm() + of_b * i.norm(),
+                    rounding + of_c * v.norm() + of_d * i.norm(),
+                );
+            }
         }
     }
 

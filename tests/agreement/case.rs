@@ -18,7 +18,7 @@ use crate::uncertain::Uncertain;
 pub(crate) const LONGEST: usize = 32;
 
 /// A plan at one frequency.
-pub(crate) struct Case<W> {
+pub(crate) struct Case<W: Word> {
     /// The reference.
     pub(crate) exact: FrequencyPoint,
     /// The kernel.

@@ -3,7 +3,9 @@
 use num_complex::Complex;
 use stagebits::reference::FrequencyPoint;
 use stagebits_kernel as kernel;
-use stagebits_kernel::{Frequency, Immittance, Real, Stage, Step, StubFunction, Walk, Word};
+use stagebits_kernel::{
+    Frequency, Immittance, Real, Stage, Step, StubFunction, TwoPort, TwoPortWords, Walk, Word,
+};
 
 use crate::uncertain::Uncertain;
 
@@ -16,6 +18,63 @@ pub(crate) enum Move<W> {
     Shunt(Factor<W>),
     /// v ← n·v, i ← i/n
     Stretch(Factor<W>, Factor<W>),
+    /// v and i by a matrix of determinant 1
+    TwoPort(Matrix<W>),
+}
+
+/// A chain matrix, exact and in words.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Matrix<W> {
+    /// a, b, c, d
+    pub(crate) exact: [Complex<f64>; 4],
+    pub(crate) words: TwoPortWords<W>,
+    /// Bounds of |words − exact|.
+    pub(crate) errors: [f64; 4],
+}
+
+/// Values of a two-port's words; exact.
+pub(crate) fn values<W: Word>(two_port: &TwoPortWords<W>) -> [Complex<f64>; 4] {
+    let unit = f64::from(two_port.exponent()).exp2();
+    two_port
+        .words()
+        .map(|[re, im]| Complex::new(f64::from(re), f64::from(im)) * unit)
+}
+
+impl<W: Word> Matrix<W> {
+    /// Words for a matrix that was resolved with an uncertainty.
+    fn resolved(words: TwoPortWords<W>, of: TwoPort<Uncertain>) -> Self {
+        let half_unit = f64::from(words.exponent()).exp2() / 2.0;
+        let error = |part: Uncertain| part.error + if part.is_zero() { 0.0 } else { half_unit };
+        let entries = [of.a, of.b, of.c, of.d];
+        Self {
+            exact: entries.map(exact),
+            words,
+            errors: entries.map(|z| error(z.re).hypot(error(z.im))),
+        }
+    }
+
+    /// Words that are what is meant, but for the factor that makes the determinant 1.
+    fn of_words(words: TwoPortWords<W>) -> Self {
+        let [a, b, c, d] = values(&words);
+        let factor = (a * d - b * c).sqrt().inv();
+        let exact = [a, b, c, d].map(|entry| entry * factor);
+        let errors = [a, b, c, d].map(|entry| (entry - entry * factor).norm());
+        Self {
+            exact,
+            words,
+            errors,
+        }
+    }
+
+    fn adjugate(&self) -> Self {
+        let [a, b, c, d] = self.exact;
+        let [of_a, of_b, of_c, of_d] = self.errors;
+        Self {
+            exact: [d, -b, -c, a],
+            words: <kernel::State<W> as Walk<_>>::adjugate(&self.words),
+            errors: [of_d, of_b, of_c, of_a],
+        }
+    }
 }
 
 /// An immittance, exact and in words.
@@ -101,12 +160,21 @@ impl<W: Word> Factor<W> {
 }
 
 impl<W: Word> Move<W> {
+    /// How many of v and i it multiplies into the other.
+    pub(crate) fn multiplications(&self) -> usize {
+        match self {
+            Self::Series(_) | Self::Shunt(_) | Self::Stretch(..) => 1,
+            Self::TwoPort(_) => 2,
+        }
+    }
+
     /// The move that undoes this one.
     pub(crate) fn inverse(&self) -> Self {
         match self {
             Self::Series(z) => Self::Series(z.negated()),
             Self::Shunt(y) => Self::Shunt(y.negated()),
             Self::Stretch(ratio, inverse) => Self::Stretch(*inverse, *ratio),
+            Self::TwoPort(matrix) => Self::TwoPort(matrix.adjugate()),
         }
     }
 }
@@ -157,6 +225,9 @@ pub(crate) fn moves<W: Word>(
                 let inverse = Factor::resolved(matrix.d, inverse, of_inverse, None);
                 vec![Move::Stretch(ratio, inverse)]
             }
+            (Step::TwoPort(words), Step::TwoPort(of)) => {
+                vec![Move::TwoPort(Matrix::resolved(words, of))]
+            }
             pair => panic!("not the same stage: {pair:?}"),
         }
     });
@@ -185,6 +256,7 @@ pub(crate) fn moves_of_words<W: Word>(words: &[Step<Immittance<W>>]) -> Vec<Move
                 };
                 moves.push(Move::Stretch(ratio, inverse));
             }
+            Step::TwoPort(words) => moves.push(Move::TwoPort(Matrix::of_words(words))),
         }
     }
     moves

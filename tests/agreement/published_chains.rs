@@ -7,6 +7,7 @@ use stagebits_kernel::{Bits, Swr, Word};
 
 use crate::bound::{Trace, readout_bound};
 use crate::case::Case;
+use crate::moves::Move;
 use crate::published::{Chain, Expected, Figure, Quantity, chains, tolerance};
 
 /// A chain with the walk of each of its cases.
@@ -198,7 +199,9 @@ fn bound_is_close<W: Word>() {
             if trace.conditioning() <= 1.0 {
                 well_conditioned += 1;
                 let half_unit = f64::from(1 - W::BITS as i32).exp2();
-                let bound = bound / half_unit / (point.moves.iter().flatten().count() + 1) as f64;
+                let moves = point.moves.iter().flatten();
+                let multiplications: usize = moves.map(Move::multiplications).sum();
+                let bound = bound / half_unit / (multiplications + 1) as f64;
                 assert!(bound <= per_multiplication, "{title}: {bound}");
             }
         }

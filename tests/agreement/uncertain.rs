@@ -5,18 +5,17 @@
 //! have led to. What each operation adds is its own rounding; what it was given is carried on with
 //! the largest derivative over the range of its arguments.
 
-use stagebits_kernel::{Real, Scalar};
-use std::f64::consts::{FRAC_PI_4, TAU};
+use stagebits_kernel::Real;
+use std::f64::consts::{FRAC_PI_2, TAU};
 
 /// Half a unit of a scalar's last place over the scalar: what one operation adds at most.
 const SCALAR: f64 = 1.0 / (1_u64 << 31) as f64;
 
-/// Sine or cosine of the rounded angle, absolute.
-const CIRCULAR: f64 = 1.15 * SCALAR;
+/// Sine or cosine of the angle, the rounding of the angle included, absolute.
+const CIRCULAR: f64 = 1.6 * SCALAR;
 
-/// Half of a line's angle, in radians: 2^-34 turns of the whole angle from rounding it to 32 bits,
-/// and 2^-65 turns per hertz from the stored length, at less than 2^32 Hz.
-const HALF_ANGLE: f64 = TAU / 2.0 * (0.125 + 0.25) * SCALAR;
+/// A line's angle, in radians: 2^-65 turns per hertz from the stored length, at less than 2^32 Hz.
+const ANGLE: f64 = TAU * 0.25 * SCALAR;
 
 /// Hyperbolic sine or cosine of x, over cosh x · (1 + x).
 const HYPERBOLIC: f64 = 2.0 * SCALAR;
@@ -32,6 +31,8 @@ pub(crate) struct Uncertain {
     pub(crate) value: f64,
     /// Bound of |kernel's − exact|.
     pub(crate) error: f64,
+    /// Of a constant: the word that is stored. Else as good as `value`.
+    nearest: f64,
 }
 
 impl Uncertain {
@@ -45,6 +46,7 @@ impl Uncertain {
         Self {
             value,
             error: half_unit,
+            nearest: (value / half_unit / 2.0).round() * half_unit * 2.0,
         }
     }
 
@@ -53,6 +55,7 @@ impl Uncertain {
         Self {
             value,
             error: error + SCALAR * (value.abs() + error),
+            nearest: value,
         }
     }
 
@@ -66,20 +69,20 @@ impl Real for Uncertain {
     const ZERO: Self = Self {
         value: 0.0,
         error: 0.0,
+        nearest: 0.0,
     };
     const ONE: Self = Self {
         value: 1.0,
         error: 0.0,
+        nearest: 1.0,
     };
-
-    /// As of the kernel's scalar: what the angle is rounded to decides which half turn it is in.
-    const ANGLE_ROUNDING: u64 = Scalar::ANGLE_ROUNDING;
 
     fn from_hertz(hertz: u32) -> Self {
         let exact = hertz < 1 << 31;
         Self {
             value: f64::from(hertz),
             error: if exact { 0.0 } else { 0.5 },
+            nearest: f64::from(hertz),
         }
     }
 
@@ -108,6 +111,7 @@ impl Real for Uncertain {
     fn negated(self) -> Self {
         Self {
             value: -self.value,
+            nearest: -self.nearest,
             ..self
         }
     }
@@ -117,6 +121,7 @@ impl Real for Uncertain {
         Self {
             value: self.value * factor,
             error: self.error * factor,
+            nearest: self.nearest * factor,
         }
     }
 
@@ -126,13 +131,15 @@ impl Real for Uncertain {
             // |1/(x + δ) − 1/x| = |δ| / (|x| |x + δ|)
             return Self::rounded(self.value.recip(), self.error / (self.value.abs() * least));
         }
+        let value = if self.value == 0.0 {
+            OPEN
+        } else {
+            self.value.recip()
+        };
         Self {
-            value: if self.value == 0.0 {
-                OPEN
-            } else {
-                self.value.recip()
-            },
+            value,
             error: f64::INFINITY,
+            nearest: value,
         }
     }
 
@@ -143,31 +150,37 @@ impl Real for Uncertain {
         Self::rounded(root, self.error / (root + least.sqrt()))
     }
 
-    fn sine_cosine(half_angle: i64) -> (Self, Self) {
-        // an angle that rounds to π/2 is taken a half turn lower, as the kernel does
-        let wraps = half_angle > i64::MAX - (1 << 31);
-        let turned = if wraps { 2.0 } else { 0.0 };
-        let angle = (half_angle as f64 / (1_u64 << 63) as f64 - turned) * FRAC_PI_4;
+    fn sine_cosine(angle: i64) -> (Self, Self) {
+        let angle = angle as f64 / (1_u64 << 63) as f64 * FRAC_PI_2;
         let (sine, cosine) = angle.sin_cos();
         let with = |value: f64, slope: f64| Self {
             value,
-            error: CIRCULAR + HALF_ANGLE * (slope.abs() + HALF_ANGLE),
+            error: CIRCULAR + ANGLE * (slope.abs() + ANGLE),
+            nearest: value,
         };
         (with(sine, cosine), with(cosine, sine))
     }
 
     fn hyperbolic(self) -> (Self, Self) {
-        let Self { value: x, error } = self;
+        let Self {
+            value: x, error, ..
+        } = self;
         let carried = (x + error).cosh() * error;
         let own = HYPERBOLIC * x.cosh() * (1.0 + x);
-        let with = |value| Self {
+        let with = |value: f64| Self {
             value,
             error: carried + own,
+            nearest: value,
         };
         (with(x.sinh()), with(x.cosh()))
     }
 
     fn is_zero(self) -> bool {
         self == Self::ZERO
+    }
+
+    /// The kernel has only the word.
+    fn is_near_one(self) -> bool {
+        (0.5..2.0).contains(&self.nearest)
     }
 }

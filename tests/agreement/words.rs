@@ -9,14 +9,17 @@ use stagebits_kernel::{Bits, Gamma, Immittance, Resolved, State, Step, Word};
 
 use crate::bound::Trace;
 use crate::case::plan;
-use crate::moves::{Move, moves_of_words, value};
+use crate::moves::{Move, moves_of_words, value, values};
 use crate::strategies::{self, Dissipation};
 
 /// Four words of a state with its exponent.
 type StateWords = ([i32; 2], [i32; 2], i32);
 
-/// Everything that a chain gives at one point: steps, states, Γ.
-type Everything = (Vec<Step<([i32; 2], i32)>>, Vec<StateWords>, Gamma);
+/// A complex word with its exponent.
+type ComplexWord = ([i32; 2], i32);
+
+/// Everything that a chain gives at one point: immittances of every step, states, Γ.
+type Everything = (Vec<Vec<ComplexWord>>, Vec<StateWords>, Gamma);
 
 fn resolved<W: Word>(plan: &Plan, hertz: u32) -> Resolved<Immittance<W>, CAPACITY> {
     Block::<W>::new(&constants::exact(plan)).at(hertz)
@@ -24,8 +27,17 @@ fn resolved<W: Word>(plan: &Plan, hertz: u32) -> Resolved<Immittance<W>, CAPACIT
 
 fn everything<W: Word>(plan: &Plan, hertz: u32, load: Gamma) -> Everything {
     let point = resolved::<W>(plan, hertz);
-    let plain = |z: Immittance<W>| (z.words(), z.exponent());
-    let steps = point.steps().iter().map(|step| step.map(plain)).collect();
+    let plain = |z: &Immittance<W>| (z.words(), z.exponent());
+    let steps = point.steps().iter().map(|step| match step {
+        Step::Series(z) | Step::Shunt(z) => vec![plain(z)],
+        Step::Tee { series, shunt } => vec![plain(series), plain(shunt)],
+        Step::Stretch { ratio, inverse } => vec![plain(ratio), plain(inverse)],
+        Step::TwoPort(words) => words
+            .words()
+            .map(|entry| (entry, words.exponent()))
+            .to_vec(),
+    });
+    let steps = steps.collect();
     let states = states(&point, load).map(|state| state.words()).collect();
     let gamma = point.walk(State::from_load(load)).gamma();
     (steps, states, gamma)
@@ -40,6 +52,10 @@ fn largest_part<W: Word>(step: &Move<W>, state: &State<W>) -> f64 {
         Move::Stretch(ratio, inverse) => {
             v *= value(&ratio.words);
             i *= value(&inverse.words);
+        }
+        Move::TwoPort(matrix) => {
+            let [a, b, c, d] = values(&matrix.words);
+            (v, i) = (a * v + b * i, c * v + d * i);
         }
     }
     [v.re, v.im, i.re, i.im]

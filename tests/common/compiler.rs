@@ -248,7 +248,7 @@ fn command(program: &Path, subcommand: &str, compiler: &Compiler, core: &Core) -
         // `-Z` is for nightly compilers; the variable makes a stable one accept it.
         cargo
             .env("RUSTC_BOOTSTRAP", "1")
-            .args(["-Z", "build-std=core"]);
+            .args(["-Z", "build-std=core,alloc"]);
     }
     cargo
 }

@@ -19,10 +19,13 @@ mod compiler;
 mod cores;
 #[path = "footprint.rs"]
 mod footprint;
+#[path = "symbols.rs"]
+mod symbols;
 
 pub(crate) use compiler::{build, compiler_version, lint};
 pub(crate) use cores::{CORES, Core, Counter};
 pub(crate) use footprint::{Footprint, footprint};
+pub(crate) use symbols::{Unwanted, symbols, unwanted};
 
 /// Longest time that a run may take unless the test says otherwise: many times what any needs.
 pub(crate) const TIME_LIMIT: Duration = Duration::from_secs(120);
