@@ -10,12 +10,14 @@ use crate::walk::Walk;
 
 /// Up to `N` stages, the first at the source and the last at the load.
 #[derive(Clone, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Chain<R, const N: usize> {
     stages: Vec<Stage<R>, N>,
 }
 
 /// A chain with more stages than its capacity.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct TooManyStages;
 
 impl<R: Copy, const N: usize> Chain<R, N> {

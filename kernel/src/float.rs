@@ -91,6 +91,7 @@ real!(
 
 /// Voltage v and current R0·i in floating point.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct FloatState<R> {
     /// Voltage.
     pub v: Complex<R>,

@@ -24,13 +24,20 @@
 //! let (resistance, reactance) = input.moments().milliohms(50_000);
 //! assert_eq!((resistance, reactance), (50_000, 43_982)); // 2π · 7 MHz · 1 µH = 43.982 ohm
 //! ```
+//!
+//! # Features
+//! - `float`: the same stages over `f32` and `f64`.
+//! - `defmt`: `defmt::Format` on every public type, numbers as the words that they are.
 #![cfg_attr(not(test), no_std)]
 #![forbid(unsafe_code)]
 
 mod angle;
 mod chain;
+pub mod correction;
 #[cfg(feature = "float")]
 mod float;
+#[cfg(feature = "defmt")]
+mod format;
 mod frequency;
 mod hyperbolic;
 pub mod image;

@@ -42,6 +42,7 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
 
 /// A complex number.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Complex<R> {
     /// Real part.
     pub re: R,
@@ -74,6 +75,30 @@ impl<R: Real> Complex<R> {
             re: self.re.plus(other.re),
             im: self.im.plus(other.im),
         }
+    }
+
+    /// Difference.
+    #[inline]
+    pub(crate) fn minus(self, other: Self) -> Self {
+        Self {
+            re: self.re.minus(other.re),
+            im: self.im.minus(other.im),
+        }
+    }
+
+    /// Product.
+    #[inline]
+    pub(crate) fn times(self, other: Self) -> Self {
+        Self {
+            re: self.re.times(other.re).minus(self.im.times(other.im)),
+            im: self.re.times(other.im).plus(self.im.times(other.re)),
+        }
+    }
+
+    /// Whether both parts are zero.
+    #[inline]
+    pub(crate) fn is_zero(self) -> bool {
+        self.re.is_zero() && self.im.is_zero()
     }
 
     /// Product with a real number.

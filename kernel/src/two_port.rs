@@ -9,6 +9,7 @@ use crate::word::Word;
 ///
 /// Any common factor of the four is without effect on a ratio of v and i.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct TwoPort<R> {
     /// v per v.
     pub a: Complex<R>,
@@ -20,6 +21,10 @@ pub struct TwoPort<R> {
     pub d: Complex<R>,
 }
 
+#[cfg_attr(
+    not(feature = "float"),
+    expect(dead_code, reason = "only floating point walks unrounded two-ports")
+)]
 impl<R: Real> TwoPort<R> {
     /// The inverse but for a factor, 1 for a reciprocal two-port: d, −b, −c, a.
     pub(crate) fn adjugate(&self) -> Self {

@@ -192,15 +192,9 @@ pub(crate) fn lint(core: &Core) -> Result<(), Failure> {
         )));
     }
     let mut clippy = command(&compiler.clippy, "clippy", &compiler, core);
-    // Without the feature, images that need it would be left out.
-    clippy.args([
-        "--release",
-        "--features",
-        "float",
-        "--",
-        "--deny",
-        "warnings",
-    ]);
+    // Without the features, images that need them would be left out.
+    clippy.args(["--release", "--features", "float,log"]);
+    clippy.args(["--", "--deny", "warnings"]);
     output(&mut clippy)
         .map(drop)
         .map_err(|reason| Failure(format!("clippy on the images for {}: {reason}", core.name)))

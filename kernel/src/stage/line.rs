@@ -8,6 +8,7 @@ use crate::two_port::TwoPort;
 
 /// A length of uniform line.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Line<R> {
     /// Characteristic impedance over R0.
     pub impedance: R,

@@ -19,6 +19,7 @@ use crate::word::Word;
 
 /// Where a branch or a stub sits.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Position {
     /// In the through path: an impedance.
     Series,
@@ -28,6 +29,7 @@ pub enum Position {
 
 /// One two-port, as the constants that the image stores, normalised to R0.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Stage<R> {
     /// An immittance that is a law of frequency.
     Branch(Branch<R>),

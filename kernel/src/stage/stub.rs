@@ -8,6 +8,7 @@ use crate::real::{Complex, Real};
 
 /// Which function of γl the stub's immittance follows.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum StubFunction {
     /// tanh γl: the impedance of a shorted stub, the admittance of an open one.
     Tanh,
@@ -17,6 +18,7 @@ pub enum StubFunction {
 
 /// A stub.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Stub<R> {
     /// Where the stub sits.
     pub position: Position,

@@ -20,6 +20,7 @@ pub mod console;
 pub mod count;
 pub mod exit;
 pub mod file;
+pub mod logged;
 pub mod points;
 pub mod seven_stages;
 pub mod stack;
