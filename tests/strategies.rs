@@ -22,23 +22,26 @@ pub(crate) enum Dissipation {
 pub(crate) fn plan(dissipation: Dissipation, longest: usize) -> impl Strategy<Value = (Plan, f64)> {
     (100_000_u32..3_000_000_000, 10.0..300.0_f64).prop_flat_map(move |(hertz, reference)| {
         let hertz_f64 = f64::from(hertz);
-        prop::collection::vec(stage(dissipation, hertz_f64), 1..=longest).prop_map(move |stages| {
-            let plan = Plan {
-                title: "random".to_owned(),
-                reference,
-                band: Band {
-                    from: hertz,
-                    to: hertz,
-                    points: 1,
-                },
-                loads: Loads::SwrUpTo(f64::INFINITY),
-                firmware: Firmware { word_bits: 32 },
-                accuracy: Accuracy { gamma: 1e-6 },
-                stages,
-            };
-            (plan, hertz_f64)
-        })
+        prop::collection::vec(stage(dissipation, hertz_f64), 1..=longest)
+            .prop_map(move |stages| (chain(stages, hertz, reference), hertz_f64))
     })
+}
+
+/// A plan of these stages at one frequency.
+pub(crate) fn chain(stages: Vec<Stage>, hertz: u32, reference: f64) -> Plan {
+    Plan {
+        title: "random".to_owned(),
+        reference,
+        band: Band {
+            from: hertz,
+            to: hertz,
+            points: 1,
+        },
+        loads: Loads::SwrUpTo(f64::INFINITY),
+        firmware: Firmware { word_bits: 32 },
+        accuracy: Accuracy { gamma: 1e-6 },
+        stages,
+    }
 }
 
 /// A reflection coefficient in the closed unit disc, its edge, open and short included.

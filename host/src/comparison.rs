@@ -7,7 +7,7 @@
 
 use num_complex::Complex;
 use stagebits_kernel as kernel;
-use stagebits_kernel::{Frequency, Gamma, Immittance, Resolved, Scalar, Step, Word};
+use stagebits_kernel::{Frequency, Gamma, Immittance, Resolved, Scalar, Step, TwoPort, Word};
 
 use crate::arithmetic::{self, Arithmetic, Block, state_values, to_complex};
 use crate::constants::{self, CAPACITY, Constants};
@@ -87,7 +87,7 @@ pub struct Comparison<'plan, W> {
 }
 
 /// A [`Comparison`] at one frequency, in one state of the banks.
-pub struct ComparisonPoint<W> {
+pub struct ComparisonPoint<W: Word> {
     reference: FrequencyPoint,
     words: Resolved<Immittance<W>, CAPACITY>,
     /// Per stage, the chain up to and with that stage, in `f64` but for that stage's constants,
@@ -124,9 +124,9 @@ impl<'plan, W: Word> Comparison<'plan, W> {
             .map(|k| {
                 let before = reference.prefixes[k];
                 [
-                    before * matrix(stored.steps()[k]),
-                    before * matrix(frequency.steps()[k]),
-                    before * matrix(words.steps()[k].map(|z| immittance_value(&z))),
+                    before * matrix(&stored.steps()[k]),
+                    before * matrix(&frequency.steps()[k]),
+                    before * matrix(&step_value(&words.steps()[k])),
                 ]
             })
             .collect();
@@ -199,16 +199,37 @@ fn after(matrix: &Matrix, (v, i): (Complex<f64>, Complex<f64>)) -> Complex<f64> 
     State { v, i }.gamma()
 }
 
-/// An immittance's value in `f64`; exact.
-fn immittance_value<W: Word>(z: &Immittance<W>) -> kernel::Complex<f64> {
-    let unit = f64::from(z.exponent()).exp2();
-    let [re, im] = z.words().map(|word| f64::from(word) * unit);
-    kernel::Complex { re, im }
+/// A step's value in `f64`; exact.
+fn step_value<W: Word>(step: &Step<Immittance<W>>) -> Step<kernel::Complex<f64>> {
+    let complex = |[re, im]: [i32; 2], exponent: i32| {
+        let unit = f64::from(exponent).exp2();
+        kernel::Complex {
+            re: f64::from(re) * unit,
+            im: f64::from(im) * unit,
+        }
+    };
+    let value = |z: &Immittance<W>| complex(z.words(), z.exponent());
+    match step {
+        Step::Series(z) => Step::Series(value(z)),
+        Step::Shunt(y) => Step::Shunt(value(y)),
+        Step::Tee { series, shunt } => Step::Tee {
+            series: value(series),
+            shunt: value(shunt),
+        },
+        Step::Stretch { ratio, inverse } => Step::Stretch {
+            ratio: value(ratio),
+            inverse: value(inverse),
+        },
+        Step::TwoPort(words) => {
+            let [a, b, c, d] = words.words().map(|pair| complex(pair, words.exponent()));
+            Step::TwoPort(TwoPort { a, b, c, d })
+        }
+    }
 }
 
 /// The chain matrix of a resolved step, normalised to R0.
-fn matrix(step: Step<kernel::Complex<f64>>) -> Matrix {
-    let complex = |z: kernel::Complex<f64>| Complex::new(z.re, z.im);
+fn matrix(step: &Step<kernel::Complex<f64>>) -> Matrix {
+    let complex = |z: &kernel::Complex<f64>| Complex::new(z.re, z.im);
     match step {
         Step::Series(z) => Matrix::series(complex(z)),
         Step::Shunt(y) => Matrix::shunt(complex(y)),
@@ -225,5 +246,11 @@ fn matrix(step: Step<kernel::Complex<f64>>) -> Matrix {
                 d: complex(inverse),
             }
         }
+        Step::TwoPort(TwoPort { a, b, c, d }) => Matrix {
+            a: complex(a),
+            b: complex(b),
+            c: complex(c),
+            d: complex(d),
+        },
     }
 }

@@ -27,8 +27,9 @@ pub type Constants<R> = Chain<R, CAPACITY, STEP_CAPACITY>;
 /// The chain with its constants in `f64`.
 ///
 /// # Panics
-/// If the plan has more stages than [`CAPACITY`], or a bank without steps or with more than
-/// [`BANK_STEPS_MAX`]; the chain file reader lets none through.
+/// If the plan has more stages than [`CAPACITY`], a bank without steps or with more than
+/// [`BANK_STEPS_MAX`], or a parallel branch whose coil and capacitor both have a constant series
+/// resistance; the chain file reader lets none of them through.
 pub fn exact(plan: &Plan) -> Constants<f64> {
     let reference = plan.reference;
     let stages: Vec<_> = plan
@@ -181,6 +182,10 @@ fn admittance_law(branch: &Branch, reference: f64) -> (Law<f64>, Option<LossyRea
     if let Some(capacitor) = branch.capacitor {
         let susceptance = TAU * capacitor.value * reference;
         if let Loss::Esr(ohms) = capacitor.loss {
+            assert!(
+                beside.is_none(),
+                "a parallel branch holds one element with a constant series resistance"
+            );
             let (resistance, reactance) = (ohms / reference, -1.0 / susceptance);
             beside = Some(LossyReactor {
                 resistance,
@@ -212,8 +217,8 @@ fn line_constants(line: &Line, reference: f64) -> kernel::Line<f64> {
         impedance: line.impedance / reference,
         admittance: reference / line.impedance,
         turns_per_hertz: turns_per_hertz(line),
-        root_loss: line.k1 * line.length / 2.0,
-        linear_loss: line.k2 * line.length / 2.0,
+        root_loss: line.k1 * line.length,
+        linear_loss: line.k2 * line.length,
     }
 }
 
@@ -243,9 +248,10 @@ fn stub_constants(
     }
 }
 
-/// Electrical length in 2^-64 turns per hertz; a line of a second and more stops there.
+/// Electrical length in 2^-64 turns per hertz. Whole turns per hertz are whole turns at every whole
+/// frequency and are left out.
 fn turns_per_hertz(line: &Line) -> u64 {
-    (line.delay() * 64_f64.exp2()).round() as u64
+    (line.delay().fract() * 64_f64.exp2()).round() as u64
 }
 
 fn place(position: Position) -> kernel::Position {

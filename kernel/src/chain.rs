@@ -5,7 +5,7 @@ use heapless::Vec;
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
 use crate::scalar::Scalar;
-use crate::stage::{BANK_STEPS_MAX, Bank, BankStep, Change, Stage, Step};
+use crate::stage::{BANK_STEPS_MAX, Bank, BankStep, Change, Stage, Step, StepForm};
 use crate::walk::Walk;
 
 /// Up to `N` stages, the first at the source and the last at the load, and up to `S` steps of the
@@ -13,6 +13,7 @@ use crate::walk::Walk;
 ///
 /// The steps have a table of their own, so that a chain without banks takes no room for them.
 #[derive(Clone, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Chain<R, const N: usize, const S: usize = 0> {
     stages: Vec<Stage<R>, N>,
     /// Steps of the first bank, of the second, and so on; the rest are zeros.
@@ -21,6 +22,7 @@ pub struct Chain<R, const N: usize, const S: usize = 0> {
 
 /// Stages, or steps of banks, that make no chain.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum ChainError {
     /// There are more stages than the chain's capacity `N`.
     TooManyStages,
@@ -161,17 +163,17 @@ impl<const N: usize, const S: usize> Chain<Scalar, N, S> {
         frequency: &Frequency<Scalar>,
         switches: &[u16],
     ) -> Resolved<crate::Immittance<W>, N> {
-        self.resolve(frequency, switches, crate::Immittance::from_scalars)
+        self.resolve(frequency, switches, Step::to_words)
     }
 }
 
 impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
     #[inline]
-    pub(crate) fn resolve<Z>(
+    pub(crate) fn resolve<Z: StepForm>(
         &self,
         frequency: &Frequency<R>,
         switches: &[u16],
-        convert: impl Fn(Complex<R>) -> Z,
+        convert: impl Fn(Step<Complex<R>>) -> Step<Z>,
     ) -> Resolved<Z, N> {
         let mut switches = switches.iter();
         self.resolve_with(frequency, convert, |_, bank, steps| {
@@ -185,10 +187,10 @@ impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
     /// The chain at one frequency, with its banks as `bank` makes them from their number among the
     /// stages, counted from 0, and their steps.
     #[inline]
-    pub(crate) fn resolve_with<Z>(
+    pub(crate) fn resolve_with<Z: StepForm>(
         &self,
         frequency: &Frequency<R>,
-        convert: impl Fn(Complex<R>) -> Z,
+        convert: impl Fn(Step<Complex<R>>) -> Step<Z>,
         mut bank: impl FnMut(usize, &Bank<R>, &[BankStep<R>]) -> Step<Complex<R>>,
     ) -> Resolved<Z, N> {
         let mut steps = Vec::new();
@@ -207,7 +209,7 @@ impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
                 stage => stage.resolve(frequency),
             };
             // both have capacity N, so that no stage is left out
-            let _ = steps.push(step.map(&convert));
+            let _ = steps.push(convert(step));
             inverted ^= inverts;
         }
         Resolved { steps, inverted }
@@ -216,12 +218,12 @@ impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
 
 /// A chain at one frequency.
 #[derive(Clone, PartialEq, Debug)]
-pub struct Resolved<Z, const N: usize> {
+pub struct Resolved<Z: StepForm, const N: usize> {
     steps: Vec<Step<Z>, N>,
     inverted: bool,
 }
 
-impl<Z, const N: usize> Resolved<Z, N> {
+impl<Z: StepForm, const N: usize> Resolved<Z, N> {
     /// The steps, from the source to the load.
     pub fn steps(&self) -> &[Step<Z>] {
         &self.steps

@@ -6,17 +6,16 @@
 use crate::chain::{Chain, Resolved};
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
+use crate::two_port::TwoPort;
 use crate::walk::Walk;
 
 macro_rules! real {
-    ($float:ty, $sqrt:path, $sin:path, $cos:path, $sinh:path, $cosh:path, $scalbn:path, $pi_4:expr) => {
+    ($float:ty, $sqrt:path, $sin:path, $cos:path, $sinh:path, $cosh:path, $scalbn:path, $pi_2:expr) => {
         impl Real for $float {
             const ZERO: Self = 0.0;
             const ONE: Self = 1.0;
             // 2^60, whose square is in range, and which moves Γ by less than the last digit
             const HUGE: Self = (1_u64 << 60) as Self;
-            // an angle that rounds to a quarter turn stays one
-            const ANGLE_ROUNDING: u64 = 0;
             #[inline]
             fn from_hertz(hertz: u32) -> Self {
                 hertz as $float
@@ -50,10 +49,14 @@ macro_rules! real {
                 if self > 0.0 { $sqrt(self) } else { 0.0 }
             }
             #[inline]
-            fn sine_cosine(half_angle: i64) -> (Self, Self) {
+            fn sine_cosine(angle: i64) -> (Self, Self) {
                 // 2^63, exact in either type
-                let angle = half_angle as $float * ($pi_4 / 9_223_372_036_854_775_808.0);
-                ($sin(angle), $cos(angle))
+                let angle = angle as $float * ($pi_2 / 9_223_372_036_854_775_808.0);
+                ($sin(angle), $cos(angle).max(0.0))
+            }
+            #[inline]
+            fn is_near_one(self) -> bool {
+                (0.5..2.0).contains(&self)
             }
             #[inline]
             fn hyperbolic(self) -> (Self, Self) {
@@ -93,7 +96,7 @@ real!(
     libm::sinhf,
     libm::coshf,
     libm::scalbnf,
-    core::f32::consts::FRAC_PI_4
+    core::f32::consts::FRAC_PI_2
 );
 real!(
     f64,
@@ -103,11 +106,12 @@ real!(
     libm::sinh,
     libm::cosh,
     libm::scalbn,
-    core::f64::consts::FRAC_PI_4
+    core::f64::consts::FRAC_PI_2
 );
 
 /// Voltage v and current R0·i in floating point.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct FloatState<R> {
     /// Voltage.
     pub v: Complex<R>,
@@ -176,6 +180,21 @@ impl<R: Real> Walk<Complex<R>> for FloatState<R> {
         self.i = self.i.scaled(inverse.re);
     }
     #[inline]
+    fn two_port(&mut self, two_port: &TwoPort<R>) {
+        let TwoPort { a, b, c, d } = *two_port;
+        let (v, i) = (self.v, self.i);
+        self.v = times(a, v).plus(times(b, i));
+        self.i = times(c, v).plus(times(d, i));
+    }
+    #[inline]
+    fn adjugate(two_port: &TwoPort<R>) -> TwoPort<R> {
+        two_port.adjugate()
+    }
+    #[inline]
+    fn turned(two_port: &TwoPort<R>) -> TwoPort<R> {
+        two_port.turned()
+    }
+    #[inline]
     fn negated(z: &Complex<R>) -> Complex<R> {
         Complex {
             re: z.re.negated(),
@@ -198,6 +217,6 @@ impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
         frequency: &Frequency<R>,
         switches: &[u16],
     ) -> Resolved<Complex<R>, N> {
-        self.resolve(frequency, switches, |z| z)
+        self.resolve(frequency, switches, |step| step)
     }
 }

@@ -18,8 +18,8 @@ pub struct Immittance<W> {
 }
 
 impl<W: Word> Immittance<W> {
-    /// Largest exponent: W − 2. Greater immittances count as 2^(W−4) in their own direction, an
-    /// open or short circuit to within what the word length can show: |ΔΓ| ≤ 2^(5−W).
+    /// Largest exponent: W − 2. Greater immittances count as 2^(W−4) in their own direction: an
+    /// open or short circuit to within |ΔΓ| = 2^(5−W), unless what lies behind resonates with them.
     pub const EXPONENT_MAX: i32 = W::BITS as i32 - 2;
 
     /// Smallest exponent: what lies below adds nothing to a state of W − 1 bits.
@@ -28,36 +28,10 @@ impl<W: Word> Immittance<W> {
     /// Rounds both parts to words of a common exponent.
     #[inline]
     pub(crate) fn from_scalars(z: Complex<Scalar>) -> Self {
-        // |scalar| < 2^(its exponent + 31), and words take values below 2^(exponent − 2)
-        let top = |s: Scalar| {
-            if s.is_zero() {
-                i32::MIN
-            } else {
-                s.exponent() + 33
-            }
-        };
-        let exponent = top(z.re).max(top(z.im));
-        if exponent < Self::EXPONENT_MIN {
-            return Self::new(0, 0, 0);
-        }
-        // a saturated immittance keeps its direction
-        let excess = (exponent - Self::EXPONENT_MAX).max(0);
-        let exponent = exponent - excess;
-        let part = |s: Scalar, exponent: i32| {
-            let right = exponent - W::BITS as i32 - (s.exponent() - excess);
-            round_shift(s.mantissa() as i64, right.unsigned_abs()) as i32
-        };
-        let (re, im) = (part(z.re, exponent), part(z.im, exponent));
-        // rounding may carry into the next bit
-        let carried = |word: i32| word.unsigned_abs() >= W::LIMIT as u32;
-        if carried(re) || carried(im) {
-            if exponent < Self::EXPONENT_MAX {
-                let exponent = exponent + 1;
-                return Self::new(part(z.re, exponent), part(z.im, exponent), exponent);
-            }
-            let clamp = |word: i32| word.clamp(1 - W::LIMIT, W::LIMIT - 1);
-            return Self::new(clamp(re), clamp(im), exponent);
-        }
+        let Packed {
+            words: [re, im],
+            exponent,
+        } = pack::<W, 2>([z.re, z.im], Self::EXPONENT_MIN);
         Self::new(re, im, exponent)
     }
 
@@ -110,6 +84,52 @@ impl<W: Word> Immittance<W> {
             ..*self
         }
     }
+}
+
+/// Words with a common exponent: word · 2^(exponent − W).
+pub(crate) struct Packed<const N: usize> {
+    pub(crate) words: [i32; N],
+    pub(crate) exponent: i32,
+}
+
+/// Rounds scalars to words below 2^(W−2) of the smallest common exponent from `least` to
+/// [`Immittance::EXPONENT_MAX`]. Greater ones are scaled down together to what fits.
+#[inline]
+pub(crate) fn pack<W: Word, const N: usize>(parts: [Scalar; N], least: i32) -> Packed<N> {
+    // |scalar| < 2^(its exponent + 31), and words take values below 2^(exponent − 2)
+    let mut exponent = least;
+    for part in parts {
+        if !part.is_zero() {
+            exponent = exponent.max(part.exponent() + 33);
+        }
+    }
+    let most = Immittance::<W>::EXPONENT_MAX;
+    let excess = (exponent - most).max(0);
+    let round = |exponent: i32| {
+        parts.map(|part| {
+            let right = exponent + excess - W::BITS as i32 - part.exponent();
+            // a zero's own exponent says nothing, and its mantissa is zero at any shift
+            round_shift(part.mantissa() as i64, right.max(0) as u32) as i32
+        })
+    };
+    exponent -= excess;
+    let words = round(exponent);
+    // rounding may carry into the next bit
+    if words
+        .iter()
+        .all(|word| word.unsigned_abs() < W::LIMIT as u32)
+    {
+        return Packed { words, exponent };
+    }
+    if exponent < most {
+        let exponent = exponent + 1;
+        return Packed {
+            words: round(exponent),
+            exponent,
+        };
+    }
+    let words = words.map(|word| word.clamp(1 - W::LIMIT, W::LIMIT - 1));
+    Packed { words, exponent }
 }
 
 #[cfg(test)]

@@ -1,9 +1,6 @@
-//! Chains of two-ports in block fixed point.
+#![doc = include_str!("../README.md")]
 //!
-//! A chain of coils, capacitors, lines, stubs and transformers is walked from its load to its
-//! source in integers of a chosen word length, in a bounded number of instructions and without a
-//! heap, a panic or a floating-point unit. The same source gives the same bits on every core and
-//! on the desktop. The formats, the rounding and the headroom are in the crate's `README.md`.
+//! # Example
 //!
 //! ```
 //! use stagebits_kernel::{Chain, Frequency, Gamma, Scalar, State};
@@ -27,13 +24,20 @@
 //! let (resistance, reactance) = input.moments().milliohms(50_000);
 //! assert_eq!((resistance, reactance), (50_000, 43_982)); // 2π · 7 MHz · 1 µH = 43.982 ohm
 //! ```
+//!
+//! # Features
+//! - `float`: the same stages over `f32` and `f64`.
+//! - `defmt`: `defmt::Format` on every public type, numbers as the words that they are.
 #![cfg_attr(not(test), no_std)]
 #![forbid(unsafe_code)]
 
 mod angle;
 mod chain;
+pub mod correction;
 #[cfg(feature = "float")]
 mod float;
+#[cfg(feature = "defmt")]
+mod format;
 mod frequency;
 mod hyperbolic;
 pub mod image;
@@ -48,6 +52,7 @@ mod state;
 mod switched;
 #[cfg(test)]
 mod testing;
+mod two_port;
 mod walk;
 mod word;
 
@@ -61,9 +66,10 @@ pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{
     BANK_STEPS_MAX, Bank, BankElement, BankStep, Branch, Law, Line, LossyReactor, Position, Stage,
-    Step, Stub, StubFunction, Transformer,
+    Step, StepForm, Stub, StubFunction, Transformer,
 };
 pub use state::State;
 pub use switched::Switched;
+pub use two_port::{TwoPort, TwoPortWords};
 pub use walk::Walk;
 pub use word::{Bits, DoubleWord, Word, round_shift};

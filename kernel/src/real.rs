@@ -28,15 +28,14 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
     fn reciprocal(self) -> Self;
     /// √x; zero where x < 0.
     fn square_root(self) -> Self;
-    /// Half a unit of the angle that [`Real::sine_cosine`] rounds to, in 2^-64 turns of the whole
-    /// angle; 0 where a quarter turn less the least bit does not become one.
-    const ANGLE_ROUNDING: u64;
-    /// Sine and cosine of half_angle · π/4 / 2^63, an angle within ±π/4.
-    fn sine_cosine(half_angle: i64) -> (Self, Self);
+    /// Sine and cosine of angle · π/2 / 2^63, an angle within ±π/2; the cosine is not negative.
+    fn sine_cosine(angle: i64) -> (Self, Self);
     /// Hyperbolic sine and cosine of x ≥ 0.
     fn hyperbolic(self) -> (Self, Self);
     /// Whether the number is zero.
     fn is_zero(self) -> bool;
+    /// Whether 1/2 ≤ x < 2.
+    fn is_near_one(self) -> bool;
     /// A number in a unit that up to sixteen share, so that they are soon added up in ever new
     /// selections.
     type Term: Copy
@@ -65,6 +64,7 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
 
 /// A complex number.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Complex<R> {
     /// Real part.
     pub re: R,
@@ -97,6 +97,30 @@ impl<R: Real> Complex<R> {
             re: self.re.plus(other.re),
             im: self.im.plus(other.im),
         }
+    }
+
+    /// Difference.
+    #[inline]
+    pub(crate) fn minus(self, other: Self) -> Self {
+        Self {
+            re: self.re.minus(other.re),
+            im: self.im.minus(other.im),
+        }
+    }
+
+    /// Product.
+    #[inline]
+    pub(crate) fn times(self, other: Self) -> Self {
+        Self {
+            re: self.re.times(other.re).minus(self.im.times(other.im)),
+            im: self.re.times(other.im).plus(self.im.times(other.re)),
+        }
+    }
+
+    /// Whether both parts are zero.
+    #[inline]
+    pub(crate) fn is_zero(self) -> bool {
+        self.re.is_zero() && self.im.is_zero()
     }
 
     /// Product with a real number.

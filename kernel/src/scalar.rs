@@ -146,7 +146,6 @@ impl Real for Scalar {
     const ZERO: Self = Self::ZERO;
     const ONE: Self = Self::ONE;
     const HUGE: Self = Self::HUGE;
-    const ANGLE_ROUNDING: u64 = crate::angle::ROUNDING;
 
     #[inline]
     fn from_hertz(hertz: u32) -> Self {
@@ -244,9 +243,15 @@ impl Real for Scalar {
     }
 
     #[inline]
-    fn sine_cosine(half_angle: i64) -> (Self, Self) {
-        let (sine, cosine) = crate::angle::sine_cosine(crate::angle::rounded(half_angle));
-        (Self::from_i32(sine, -31), Self::carry(cosine as i64, -31))
+    fn sine_cosine(angle: i64) -> (Self, Self) {
+        let [sine, cosine] =
+            crate::angle::sine_cosine(angle.unsigned_abs()).map(|part| Self::from_i64(part, -31));
+        (if angle < 0 { sine.negated() } else { sine }, cosine)
+    }
+
+    #[inline]
+    fn is_near_one(self) -> bool {
+        !self.is_negative() && (self.exponent == -31 || self.exponent == -30)
     }
 
     #[inline]

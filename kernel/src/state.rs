@@ -2,6 +2,7 @@
 
 use crate::immittance::Immittance;
 use crate::readout::Gamma;
+use crate::two_port::TwoPortWords;
 use crate::word::{DoubleWord, Word, round_shift};
 
 /// Voltage v and current R0·i at one point of the chain: four words with a shared exponent.
@@ -73,8 +74,8 @@ impl<W: Word> State<W> {
         let v = self.v.map(|word| word.times(of_v.re));
         let i = self.i.map(|word| word.times(of_i.re));
         // the product times 2^(exponent − W) must be within a word after growth
-        let need = |pair: [W::Double; 2], exponent: i32| {
-            let top = magnitude(W::upper(pair[0], 0)) | magnitude(W::upper(pair[1], 0));
+        let need = |[re, im]: [W::Double; 2], exponent: i32| {
+            let top = magnitude(W::upper(re, 0)) | magnitude(W::upper(im, 0));
             let bits = 32 - (top + 1).leading_zeros() as i32;
             bits + exponent - (W::BITS as i32 - 2)
         };
@@ -88,6 +89,32 @@ impl<W: Word> State<W> {
         self.i = i.map(|product| settle(product, of_i));
         self.exponent += grown;
     }
+
+    /// Multiplies v and i by a chain matrix, each of the four words summed at full width and
+    /// rounded once.
+    ///
+    /// Four products of words below 2^(W−2) sum to less than 2^(2W−2); the block grows by as much
+    /// as the sums need, up to the matrix's exponent.
+    #[inline]
+    pub(crate) fn two_port(&mut self, two_port: &TwoPortWords<W>) {
+        let TwoPortWords { a, b, c, d, .. } = two_port;
+        let (v, i) = (&self.v, &self.i);
+        let ([v_re, v_im], [i_re, i_im]) = if two_port.is_lossless() {
+            (real_row(a, v, b, i), real_row(d, i, c, v))
+        } else {
+            (row(a, v, b, i), row(d, i, c, v))
+        };
+        let up = two_port.up();
+        let top = magnitude(W::upper(v_re, 0))
+            | magnitude(W::upper(v_im, 0))
+            | magnitude(W::upper(i_re, 0))
+            | magnitude(W::upper(i_im, 0));
+        let kept = room::<W>(top, up);
+        let settle = |sum: W::Double| W::from_i32(round_half(W::upper(sum, kept)));
+        self.v = [settle(v_re), settle(v_im)];
+        self.i = [settle(i_re), settle(i_im)];
+        self.exponent += (up - kept) as i32;
+    }
 }
 
 /// target ← target + z · other, with both kept in one block; returns by how many powers of two
@@ -97,48 +124,87 @@ impl<W: Word> State<W> {
 /// the target in units of 1, the product is in 2^(up − 1 − down − W). Headroom: words of the state
 /// are within ±2^(W−2) and those of z below it, so the parts of the product stay below 2^(2W−3).
 ///
-/// Whether the block can stay as it is, is judged by the upper halves alone: `top`, within 2 of
-/// the sum's floor in units of 2^(up−1). Where it can, the sum in half units fits a word, so that
-/// its two terms may be added in wrapping arithmetic whatever their size.
+/// - `up` = 1, parts of z below 1/4: the product adds less than 2^(W−3), so the sum fits a word
+///   and the block grows by at most one.
+/// - `up` ≥ 2: whether the block can stay as it is, is judged by the upper halves alone: `top`,
+///   within 2 of the sum's floor in units of 2^(up−1). If so, the sum in half units fits a word and
+///   its two terms may be added in wrapping arithmetic whatever their size. Else the target is
+///   raised to the product's scale, where the sum stays below 2^(2W−2) − 2^W, and the block grows
+///   by as much as the sum needs, at least one.
 #[inline(always)]
 fn shear<W: Word>(target: &mut [W; 2], other: &mut [W; 2], z: &Immittance<W>) -> u32 {
-    let product = times(z, other);
-    let word = target.map(W::to_i32);
+    let [re, im] = times([z.re, z.im], *other);
+    let [word_re, word_im] = target.map(W::to_i32);
     let up = z.up();
     if up == 1 {
         let down = z.down();
-        let low = product.map(|part| W::upper(part, 1) >> down);
-        let sum = [0, 1].map(|part| word[part] + round_half(low[part]));
+        // one bit below the word's last place
+        let (low_re, low_im) = (W::upper(re, 1) >> down, W::upper(im, 1) >> down);
+        let sum = [word_re + round_half(low_re), word_im + round_half(low_im)];
         if magnitude(sum[0]) | magnitude(sum[1]) < W::LIMIT {
             *target = sum.map(W::from_i32);
             return 0;
         }
         // floor of the sum and one place more: rounded once from the same exact sum
-        *target = [0, 1].map(|part| W::from_i32(round_half(word[part] + (low[part] >> 1))));
+        let floor = [word_re + (low_re >> 1), word_im + (low_im >> 1)];
+        *target = floor.map(|word| W::from_i32(round_half(word)));
         *other = other.map(|word| W::from_i32(round_half(word.to_i32())));
         return 1;
     }
-    let twice = word.map(|word| word << 1);
-    let top = [0, 1].map(|part| magnitude((twice[part] >> up) + W::upper(product[part], 0)));
-    if ((top[0] | top[1]) as u32 + 2) >> (W::BITS - 1 - up) == 0 {
-        *target = [0, 1].map(|part| {
-            W::from_i32(round_half(
-                twice[part].wrapping_add(W::upper(product[part], up)),
-            ))
-        });
+    let (twice_re, twice_im) = (word_re << 1, word_im << 1);
+    let top_re = magnitude((twice_re >> up) + W::upper(re, 0));
+    let top_im = magnitude((twice_im >> up) + W::upper(im, 0));
+    if ((top_re | top_im) as u32 + 2) >> (W::BITS - 1 - up) == 0 {
+        *target = [
+            W::from_i32(round_half(twice_re.wrapping_add(W::upper(re, up)))),
+            W::from_i32(round_half(twice_im.wrapping_add(W::upper(im, up)))),
+        ];
         return 0;
     }
-    let sum = [0, 1].map(|part| target[part].raised(up - 1) + product[part]);
-    let top = magnitude(W::upper(sum[0], 0)) | magnitude(W::upper(sum[1], 0));
-    // bits from the top of the sum to one below the word's last place
-    let mut kept = up - 1;
-    while kept > 1 && (top + 1) >> (W::BITS - 1 - kept) != 0 {
-        kept -= 1;
-    }
-    *target = sum.map(|sum| W::from_i32(round_half(W::upper(sum, kept))));
+    let [of_re, of_im] = target.map(|word| word.raised(up - 1));
+    let (re, im) = (of_re + re, of_im + im);
+    let top = magnitude(W::upper(re, 0)) | magnitude(W::upper(im, 0));
+    let kept = room::<W>(top, up - 1);
+    *target = [re, im].map(|sum| W::from_i32(round_half(W::upper(sum, kept))));
     let grown = up - kept;
     *other = other.map(|word| W::from_i32(round_half(word.to_i32() >> (grown - 1))));
     grown
+}
+
+/// a·x + b·y. Apart where registers are few: one row's sums fill those of ARMv6-M.
+#[cfg_attr(short_products, inline(never))]
+#[cfg_attr(not(short_products), inline(always))]
+fn row<W: Word>(a: &[W; 2], x: &[W; 2], b: &[W; 2], y: &[W; 2]) -> [W::Double; 2] {
+    let ([re, im], [more_re, more_im]) = (times(*a, *x), times(*b, *y));
+    [re + more_re, im + more_im]
+}
+
+/// a·x + b·y with a real and b imaginary.
+#[cfg_attr(short_products, inline(never))]
+#[cfg_attr(not(short_products), inline(always))]
+fn real_row<W: Word>(
+    [a, _]: &[W; 2],
+    [re, im]: &[W; 2],
+    [_, b]: &[W; 2],
+    [other_re, other_im]: &[W; 2],
+) -> [W::Double; 2] {
+    [
+        a.times(*re) + minus(*b).times(*other_im),
+        a.times(*im) + b.times(*other_re),
+    ]
+}
+
+/// The most bits, up to `up`, that sums may be taken at below their upper halves so that half of
+/// what is taken, rounded, is a word of the state. `top` has the bits of all upper halves.
+#[inline(always)]
+fn room<W: Word>(top: i32, up: u32) -> u32 {
+    let room = |kept: u32| (top as u32 + 1) >> (W::BITS - 1 - kept) == 0;
+    // seldom more than one or two: a count of leading zeros costs more where it is a call
+    let mut kept = up;
+    while kept > 0 && !room(kept) {
+        kept -= 1;
+    }
+    kept
 }
 
 /// x/2, rounded half up.
@@ -147,20 +213,16 @@ fn round_half(x: i32) -> i32 {
     (x + 1) >> 1
 }
 
-/// Exact product of an immittance's words with a complex word; parts that are zero cost nothing.
+/// Exact complex product; parts of the first factor that are zero cost nothing.
 #[inline(always)]
-fn times<W: Word>(z: &Immittance<W>, word: &[W; 2]) -> [W::Double; 2] {
-    let [re, im] = *word;
+fn times<W: Word>([a, b]: [W; 2], [re, im]: [W; 2]) -> [W::Double; 2] {
     let zero = W::default();
-    if z.re == zero {
-        [minus(z.im).times(im), z.im.times(re)]
-    } else if z.im == zero {
-        [z.re.times(re), z.re.times(im)]
+    if a == zero {
+        [minus(b).times(im), b.times(re)]
+    } else if b == zero {
+        [a.times(re), a.times(im)]
     } else {
-        [
-            z.re.times(re) + minus(z.im).times(im),
-            z.re.times(im) + z.im.times(re),
-        ]
+        [a.times(re) + minus(b).times(im), a.times(im) + b.times(re)]
     }
 }
 

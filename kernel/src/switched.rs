@@ -7,7 +7,7 @@ use crate::frequency::Frequency;
 use crate::immittance::Immittance;
 use crate::real::{Complex, Real};
 use crate::scalar::Scalar;
-use crate::stage::{BankSum, Change};
+use crate::stage::{BankSum, Change, Step, StepForm};
 use crate::word::Word;
 
 /// A chain at one frequency whose banks can be switched.
@@ -43,7 +43,7 @@ use crate::word::Word;
 /// }
 /// ```
 #[derive(Clone, PartialEq, Debug)]
-pub struct Switched<R: Real, Z, const N: usize, const S: usize> {
+pub struct Switched<R: Real, Z: StepForm, const N: usize, const S: usize> {
     point: Resolved<Z, N>,
     banks: Vec<SwitchedBank<R>, N>,
     /// In the order of the chain's steps.
@@ -62,10 +62,10 @@ struct SwitchedBank<R: Real> {
 
 impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
     #[inline]
-    fn switched_with<Z>(
+    fn switched_with<Z: StepForm>(
         &self,
         frequency: &Frequency<R>,
-        convert: impl Fn(Complex<R>) -> Z,
+        convert: impl Fn(Step<Complex<R>>) -> Step<Z>,
     ) -> Switched<R, Z, N, S> {
         let mut banks = Vec::new();
         let mut changes = [Change::<R>::default(); S];
@@ -101,7 +101,7 @@ impl<const N: usize, const S: usize> Chain<Scalar, N, S> {
         &self,
         frequency: &Frequency<Scalar>,
     ) -> Switched<Scalar, Immittance<W>, N, S> {
-        self.switched_with(frequency, Immittance::from_scalars)
+        self.switched_with(frequency, Step::to_words)
     }
 }
 
@@ -110,18 +110,22 @@ impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
     /// The same in floating point.
     #[inline]
     pub fn switched_float(&self, frequency: &Frequency<R>) -> Switched<R, Complex<R>, N, S> {
-        self.switched_with(frequency, |z| z)
+        self.switched_with(frequency, |step| step)
     }
 }
 
-impl<R: Real, Z, const N: usize, const S: usize> Switched<R, Z, N, S> {
+impl<R: Real, Z: StepForm, const N: usize, const S: usize> Switched<R, Z, N, S> {
     /// The chain in the state that was last asked for; at first all steps are off.
     pub fn point(&self) -> &Resolved<Z, N> {
         &self.point
     }
 
     #[inline]
-    fn switch(&mut self, switches: &[u16], convert: impl Fn(Complex<R>) -> Z) -> &Resolved<Z, N> {
+    fn switch(
+        &mut self,
+        switches: &[u16],
+        convert: impl Fn(Step<Complex<R>>) -> Step<Z>,
+    ) -> &Resolved<Z, N> {
         let mut switches = switches.iter();
         let mut changes = &self.changes[..];
         for bank in &mut self.banks {
@@ -133,7 +137,7 @@ impl<R: Real, Z, const N: usize, const S: usize> Switched<R, Z, N, S> {
             if word != bank.word
                 && let Some(step) = self.point.step_mut(bank.stage)
             {
-                *step = bank.sum.step(word, own).map(&convert);
+                *step = convert(bank.sum.step(word, own));
                 bank.word = word;
             }
         }
@@ -145,7 +149,7 @@ impl<W: Word, const N: usize, const S: usize> Switched<Scalar, Immittance<W>, N,
     /// The chain with its banks in this state; `switches` as in [`Chain::at_state`].
     #[inline]
     pub fn at_state(&mut self, switches: &[u16]) -> &Resolved<Immittance<W>, N> {
-        self.switch(switches, Immittance::from_scalars)
+        self.switch(switches, Step::to_words)
     }
 }
 
@@ -154,6 +158,6 @@ impl<R: Real, const N: usize, const S: usize> Switched<R, Complex<R>, N, S> {
     /// The chain with its banks in this state; `switches` as in [`Chain::at_state`].
     #[inline]
     pub fn at_state(&mut self, switches: &[u16]) -> &Resolved<Complex<R>, N> {
-        self.switch(switches, |z| z)
+        self.switch(switches, |step| step)
     }
 }

@@ -192,7 +192,9 @@ pub(crate) fn lint(core: &Core) -> Result<(), Failure> {
         )));
     }
     let mut clippy = command(&compiler.clippy, "clippy", &compiler, core);
-    clippy.args(["--release", "--", "--deny", "warnings"]);
+    // Without the features, images that need them would be left out.
+    clippy.args(["--release", "--features", "float,log"]);
+    clippy.args(["--", "--deny", "warnings"]);
     output(&mut clippy)
         .map(drop)
         .map_err(|reason| Failure(format!("clippy on the images for {}: {reason}", core.name)))
@@ -247,7 +249,7 @@ fn command(program: &Path, subcommand: &str, compiler: &Compiler, core: &Core) -
         // `-Z` is for nightly compilers; the variable makes a stable one accept it.
         cargo
             .env("RUSTC_BOOTSTRAP", "1")
-            .args(["-Z", "build-std=core"]);
+            .args(["-Z", "build-std=core,alloc"]);
     }
     cargo
 }

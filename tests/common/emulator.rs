@@ -19,10 +19,13 @@ mod compiler;
 mod cores;
 #[path = "footprint.rs"]
 mod footprint;
+#[path = "symbols.rs"]
+mod symbols;
 
 pub(crate) use compiler::{build, compiler_version, lint};
 pub(crate) use cores::{CORES, Core, Counter};
 pub(crate) use footprint::{Footprint, footprint};
+pub(crate) use symbols::{Unwanted, symbols, unwanted};
 
 /// Longest time that a run may take unless the test says otherwise: many times what any needs.
 pub(crate) const TIME_LIMIT: Duration = Duration::from_secs(120);
@@ -83,6 +86,20 @@ pub(crate) fn run_within(
     argument: Option<&str>,
     limit: Duration,
 ) -> Result<Output, Failure> {
+    let (stdout, status) = run_raw(core, elf, argument, limit)?;
+    Ok(Output {
+        stdout: text(&stdout),
+        status,
+    })
+}
+
+/// As [`run_within`], for an image whose output is no text: its bytes and the exit status.
+pub(crate) fn run_raw(
+    core: &Core,
+    elf: &Path,
+    argument: Option<&str>,
+    limit: Duration,
+) -> Result<(Vec<u8>, i32), Failure> {
     let mut semihosting = String::from("enable=on,target=native");
     if let Some(argument) = argument {
         // The emulator's option parser takes a doubled comma for a comma.
@@ -115,13 +132,13 @@ pub(crate) fn run_within(
         let _ = child.kill();
         let _ = child.wait();
     }
-    let text = |bytes: thread::JoinHandle<Vec<u8>>| {
-        String::from_utf8_lossy(&bytes.join().expect("reading does not panic")).into_owned()
-    };
-    let (stdout, stderr) = (text(stdout), text(stderr));
+    let bytes =
+        |reader: thread::JoinHandle<Vec<u8>>| reader.join().expect("reading does not panic");
+    let (stdout, stderr) = (bytes(stdout), text(&bytes(stderr)));
     let what = format!("{} on {} ({})", elf.display(), core.name, core.emulator);
     let ended = ended.map_err(|error| Failure(format!("{what}: cannot wait: {error}")))?;
     let Some(ended) = ended else {
+        let stdout = text(&stdout);
         let last = stdout.lines().last().unwrap_or("nothing");
         return Err(Failure(format!(
             "{what}: stopped at the time limit of {} s; printed last: {last}\n{stderr}",
@@ -140,7 +157,11 @@ pub(crate) fn run_within(
             "{what}: exit status {status}, and complaints:\n{stderr}"
         )));
     }
-    Ok(Output { stdout, status })
+    Ok((stdout, status))
+}
+
+fn text(bytes: &[u8]) -> String {
+    String::from_utf8_lossy(bytes).into_owned()
 }
 
 fn collect(mut pipe: impl Read + Send + 'static) -> thread::JoinHandle<Vec<u8>> {

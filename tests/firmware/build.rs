@@ -32,6 +32,11 @@ fn main() {
     for argument in scripts {
         println!("cargo:rustc-link-arg-bins={argument}");
     }
+    if env::var_os("CARGO_FEATURE_LOG").is_some() {
+        println!("cargo:rustc-link-arg-bins=-Tdefmt.x");
+        // defmt's macros leave out all but errors unless told otherwise
+        println!("cargo:rustc-env=DEFMT_LOG=info");
+    }
 }
 
 fn memory(core: &Core) -> String {

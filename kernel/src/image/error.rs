@@ -8,6 +8,7 @@ use crate::stage::BANK_STEPS_MAX;
 
 /// Why bytes are no image of a chain, or a chain has no image.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum ImageError {
     /// The bytes end within the header or the checksum.
     TooShort,
@@ -67,6 +68,7 @@ pub enum ImageError {
 
 /// What is wrong with a stage of an image.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum StageFault {
     /// The stages end within it.
     Incomplete,

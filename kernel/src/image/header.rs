@@ -6,6 +6,7 @@ use super::error::ImageError;
 
 /// Word length and reference resistance of an image.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Header {
     word_bits: u8,
     reference_milliohms: u32,

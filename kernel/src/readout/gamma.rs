@@ -1,7 +1,7 @@
 //! Reflection coefficients.
 
 use super::Moments;
-use crate::real::Real;
+use crate::real::{Complex, Real};
 use crate::scalar::Scalar;
 use crate::state::State;
 use crate::word::Word;
@@ -11,6 +11,7 @@ use crate::word::Word;
 /// Loads go in and results come out in this format, whatever the word length. Parts reach ±2, so
 /// that an active load is still a number.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Gamma {
     /// Real part in 2^-30.
     pub re: i32,
@@ -30,6 +31,25 @@ impl Gamma {
     };
     /// The reference resistance itself.
     pub const MATCHED: Self = Self { re: 0, im: 0 };
+
+    /// Both parts as scalars; exact.
+    #[inline]
+    pub(crate) fn to_scalars(self) -> Complex<Scalar> {
+        let part = |word| Scalar::from_i32(word, -(Self::FRACTION_BITS as i32));
+        Complex {
+            re: part(self.re),
+            im: part(self.im),
+        }
+    }
+
+    /// Both parts rounded half up; they saturate at ±2.
+    #[inline]
+    pub(crate) fn from_scalars(value: Complex<Scalar>) -> Self {
+        Self {
+            re: fixed(value.re),
+            im: fixed(value.im),
+        }
+    }
 }
 
 /// A scalar in the unit of [`Gamma`], rounded half up; saturates at ±2.
@@ -45,15 +65,11 @@ impl Moments {
     /// that of the state.
     #[inline]
     pub fn gamma(&self) -> Gamma {
-        let gamma = Self::ratio(
+        Gamma::from_scalars(Self::ratio(
             Scalar::from_i64(self.voltage - self.current, 0),
             Scalar::from_i64(self.reactive, 1),
             self.sum_square(),
-        );
-        Gamma {
-            re: fixed(gamma.re),
-            im: fixed(gamma.im),
-        }
+        ))
     }
 
     /// |Γ|² as a scalar: relative error within 2^-29, however small; [`Scalar::HUGE`] at Γ = ∞.

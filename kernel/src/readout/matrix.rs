@@ -13,6 +13,7 @@ use crate::word::Word;
 /// Port 1 is the source's, port 2 the load's, and i₂ flows into the load. In ohms and siemens, B is
 /// b·R0 and C is c/R0.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct ChainMatrix {
     /// v₁ for v₂ = 1 and i₂ = 0.
     pub a: Complex<Scalar>,

@@ -30,6 +30,7 @@ use crate::word::{DoubleWord, Word};
 /// With these, Γ = (|v|² − |i|² + 2j Im) / (|v|² + |i|² + 2 Re): what the sum v + i would need in
 /// headroom is not needed. The unit of all four is 2^exponent; states of one walk share a scale.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Moments {
     voltage: i64,
     current: i64,

@@ -12,6 +12,7 @@ use crate::word::Word;
 ///
 /// The stages are reciprocal: S12 is S21.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Scattering {
     /// Reflection at port 1, port 2 being matched.
     pub s11: Gamma,

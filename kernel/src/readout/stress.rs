@@ -24,6 +24,7 @@ use crate::scalar::Scalar;
 ///
 #[doc = caution!()]
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Drive {
     /// Square millivolts per unit of |v|².
     voltage: Scalar,

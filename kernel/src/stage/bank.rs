@@ -9,6 +9,7 @@ pub const BANK_STEPS_MAX: u8 = u16::BITS as u8;
 
 /// What the steps of a bank are.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum BankElement {
     /// Coils in series with each other, each with a contact across it.
     Coils,
@@ -32,6 +33,7 @@ pub enum BankElement {
 /// The steps are in the chain's own table, [`crate::Chain::bank_steps`]: banks take theirs from it
 /// in the order of the stages.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Bank<R> {
     /// Where the bank sits.
     pub position: Position,
@@ -51,6 +53,7 @@ pub struct Bank<R> {
 
 /// The element of one step of a bank, normalised to R0.
 #[derive(Clone, Copy, PartialEq, Debug, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct BankStep<R> {
     /// Reactance over R0: per hertz of a coil, times hertz of a capacitor, which has it below zero.
     pub reactance: R,

@@ -10,6 +10,7 @@ use crate::real::{Complex, Real};
 /// fall. A loss given as Q makes the factor complex, one given as a series resistance adds to the
 /// constant. Normalised to R0, f in hertz.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Law<R> {
     /// Real part that does not change with frequency.
     pub constant: R,
@@ -43,6 +44,7 @@ impl<R: Real> Law<R> {
 /// Its admittance is the reciprocal of resistance + j·reactance·f, or j·reactance/f where
 /// `falling`; a capacitor has a negative reactance.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct LossyReactor<R> {
     /// Series resistance over R0.
     pub resistance: R,
@@ -57,6 +59,7 @@ pub struct LossyReactor<R> {
 /// `law` (and `beside`) give the immittance that the position needs, impedance in series and
 /// admittance in shunt, or its reciprocal where `inverted`.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Branch<R> {
     /// Where the branch sits.
     pub position: Position,

@@ -4,12 +4,11 @@ use super::Step;
 use crate::angle;
 use crate::frequency::Frequency;
 use crate::real::{Complex, Real};
+use crate::two_port::TwoPort;
 
 /// A length of uniform line.
-///
-/// The loss of the whole length is 2·(root_loss·√f + linear_loss·f) nepers: the half is what both
-/// the line's T and the image need.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Line<R> {
     /// Characteristic impedance over R0.
     pub impedance: R,
@@ -17,66 +16,99 @@ pub struct Line<R> {
     pub admittance: R,
     /// Electrical length in 2^-64 turns per hertz.
     pub turns_per_hertz: u64,
-    /// Half of the conductor loss, nepers per √Hz.
+    /// Conductor loss of the whole length, nepers per √Hz.
     pub root_loss: R,
-    /// Half of the dielectric loss, nepers per hertz.
+    /// Dielectric loss of the whole length, nepers per hertz.
     pub linear_loss: R,
 }
 
 impl<R: Real> Line<R> {
-    /// The symmetrical T equivalent to the line: series Zc·tanh(γl/2), shunt sinh(γl)/Zc.
+    /// The line but for whole half turns, and whether they were odd in number.
     ///
-    /// Whole half turns are taken off γl first. They change the sign of the state, which no
-    /// ratio of v and i shows, and keep both immittances finite: with |θ| ≤ π/2 the denominator
-    /// sinh²(αl/2) + cos²(θ/2) is at least 1/2. Also says whether they were odd in number.
+    /// Half turns change the sign of the state, which no ratio of v and i shows. What is left has
+    /// |θ| ≤ π/2 and keeps every entry finite.
+    ///
+    /// Where Zc is within a factor 2 of R0 the line is its chain matrix, cosh γl, Zc·sinh γl,
+    /// sinh γl / Zc, whose entries are then all of one size. Else it is the symmetrical T equivalent
+    /// to it, Zc·tanh(γl/2) in series and sinh(γl)/Zc in shunt, whose immittances have exponents of
+    /// their own. (D. M. Pozar, Microwave Engineering, 4th ed., Table 4.1 and sec. 2.7, from memory)
     #[inline]
     pub(super) fn at(&self, frequency: &Frequency<R>) -> (Step<Complex<R>>, bool) {
         let turns = angle::turns(frequency.hertz(), self.turns_per_hertz);
-        let inverts = angle::is_odd_half_turn(turns, R::ANGLE_ROUNDING);
-        (self.tee(angle::within_half_turn(turns), frequency), inverts)
-    }
-
-    #[inline(always)]
-    fn tee(&self, half_angle: i64, frequency: &Frequency<R>) -> Step<Complex<R>> {
-        let (sine, cosine) = R::sine_cosine(half_angle);
-        let product = sine.times(cosine);
-        if self.root_loss.is_zero() && self.linear_loss.is_zero() {
-            let tangent = sine.times(cosine.reciprocal());
-            let imaginary = |im: R| Complex { re: R::ZERO, im };
-            return Step::Tee {
-                series: imaginary(self.impedance.times(tangent)),
-                shunt: imaginary(self.admittance.times(product).times_power_of_two(1)),
-            };
-        }
-        let (loss_sine, loss_cosine) = half_loss(self.root_loss, self.linear_loss, frequency);
-        let loss_product = loss_sine.times(loss_cosine);
-        let loss_square = loss_sine.times(loss_sine);
-        let square = cosine.times(cosine);
-        // tanh(γl/2) = (sh·ch + j sin·cos) / (sh² + cos²), arguments halved
-        let scale = self.impedance.times(loss_square.plus(square).reciprocal());
-        // sinh(γl) = 2 sh·ch·cos(θ) + 2j sin·cos·cosh(αl)
-        let angle_cosine = square.minus(sine.times(sine));
-        let whole_cosine = R::ONE.plus(loss_square.times_power_of_two(1));
-        let sinh = Complex {
-            re: loss_product.times(angle_cosine),
-            im: product.times(whole_cosine),
-        };
-        Step::Tee {
-            series: Complex {
-                re: loss_product,
-                im: product,
+        let inverts = angle::is_odd_half_turn(turns);
+        let (sine, cosine) = R::sine_cosine(angle::within_half_turn(turns));
+        let loss = Loss::at(self.root_loss, self.linear_loss, frequency);
+        let (cosh, sinh) = match &loss {
+            None => {
+                let imaginary = Complex {
+                    re: R::ZERO,
+                    im: sine,
+                };
+                (
+                    Complex {
+                        re: cosine,
+                        im: R::ZERO,
+                    },
+                    imaginary,
+                )
             }
-            .scaled(scale),
-            shunt: sinh.scaled(self.admittance.times_power_of_two(1)),
+            Some(Loss { sinh, cosh }) => (
+                Complex {
+                    re: cosh.times(cosine),
+                    im: sinh.times(sine),
+                },
+                Complex {
+                    re: sinh.times(cosine),
+                    im: cosh.times(sine),
+                },
+            ),
+        };
+        let c = sinh.scaled(self.admittance);
+        if self.impedance.is_near_one() {
+            let b = sinh.scaled(self.impedance);
+            return (
+                Step::TwoPort(TwoPort {
+                    a: cosh,
+                    b,
+                    c,
+                    d: cosh,
+                }),
+                inverts,
+            );
         }
+        // tanh(γl/2) = (sinh αl + j sin θ) / (cosh αl + cos θ), whose denominator is at least 1
+        let (numerator, denominator) = match &loss {
+            None => (sinh, R::ONE.plus(cosine)),
+            Some(Loss { sinh, cosh }) => (
+                Complex {
+                    re: *sinh,
+                    im: sine,
+                },
+                cosh.plus(cosine),
+            ),
+        };
+        let series = numerator.scaled(self.impedance.times(denominator.reciprocal()));
+        (Step::Tee { series, shunt: c }, inverts)
     }
 }
 
-/// Hyperbolic sine and cosine of half a line's loss at this frequency.
-#[inline]
-pub(super) fn half_loss<R: Real>(root: R, linear: R, frequency: &Frequency<R>) -> (R, R) {
-    let loss = root
-        .times(frequency.root())
-        .plus(linear.times(frequency.value()));
-    loss.hyperbolic()
+/// Hyperbolic sine and cosine of a line's loss in nepers.
+pub(super) struct Loss<R> {
+    pub(super) sinh: R,
+    pub(super) cosh: R,
+}
+
+impl<R: Real> Loss<R> {
+    /// At one frequency; `None` where both constants are zero.
+    #[inline]
+    pub(super) fn at(root: R, linear: R, frequency: &Frequency<R>) -> Option<Self> {
+        if root.is_zero() && linear.is_zero() {
+            return None;
+        }
+        let loss = root
+            .times(frequency.root())
+            .plus(linear.times(frequency.value()));
+        let (sinh, cosh) = loss.hyperbolic();
+        Some(Self { sinh, cosh })
+    }
 }

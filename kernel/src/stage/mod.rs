@@ -14,10 +14,15 @@ pub use stub::{Stub, StubFunction};
 pub use transformer::Transformer;
 
 use crate::frequency::Frequency;
+use crate::immittance::Immittance;
 use crate::real::{Complex, Real};
+use crate::scalar::Scalar;
+use crate::two_port::{TwoPort, TwoPortWords};
+use crate::word::Word;
 
 /// Where a branch or a stub sits.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Position {
     /// In the through path: an impedance.
     Series,
@@ -27,6 +32,7 @@ pub enum Position {
 
 /// One two-port, as the constants that the image stores, normalised to R0.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub enum Stage<R> {
     /// An immittance that is a law of frequency.
     Branch(Branch<R>),
@@ -40,9 +46,23 @@ pub enum Stage<R> {
     Bank(Bank<R>),
 }
 
+/// Immittances of some arithmetic, and what goes with them.
+pub trait StepForm: Copy + PartialEq + core::fmt::Debug {
+    /// A general two-port in the same arithmetic.
+    type TwoPort: Copy + PartialEq + core::fmt::Debug;
+}
+
+impl<R: Real> StepForm for Complex<R> {
+    type TwoPort = TwoPort<R>;
+}
+
+impl<W: Word> StepForm for Immittance<W> {
+    type TwoPort = TwoPortWords<W>;
+}
+
 /// A stage at one frequency: what the walk multiplies by.
 #[derive(Clone, Copy, PartialEq, Debug)]
-pub enum Step<Z> {
+pub enum Step<Z: StepForm> {
     /// v ← v + z·i
     Series(Z),
     /// i ← i + y·v
@@ -61,6 +81,8 @@ pub enum Step<Z> {
         /// 1/n
         inverse: Z,
     },
+    /// v and i by a chain matrix.
+    TwoPort(Z::TwoPort),
 }
 
 impl<R: Real> Stage<R> {
@@ -122,21 +144,23 @@ impl<R: Copy> Stage<R> {
     }
 }
 
-impl<Z> Step<Z> {
-    /// The same step with its immittances converted.
+impl Step<Complex<Scalar>> {
+    /// The step in words.
     #[inline(always)]
-    pub fn map<Y>(self, mut convert: impl FnMut(Z) -> Y) -> Step<Y> {
+    pub(crate) fn to_words<W: Word>(self) -> Step<Immittance<W>> {
+        let words = Immittance::from_scalars;
         match self {
-            Self::Series(z) => Step::Series(convert(z)),
-            Self::Shunt(y) => Step::Shunt(convert(y)),
+            Self::Series(z) => Step::Series(words(z)),
+            Self::Shunt(y) => Step::Shunt(words(y)),
             Self::Tee { series, shunt } => Step::Tee {
-                series: convert(series),
-                shunt: convert(shunt),
+                series: words(series),
+                shunt: words(shunt),
             },
             Self::Stretch { ratio, inverse } => Step::Stretch {
-                ratio: convert(ratio),
-                inverse: convert(inverse),
+                ratio: words(ratio),
+                inverse: words(inverse),
             },
+            Self::TwoPort(two_port) => Step::TwoPort(TwoPortWords::from_scalars(&two_port)),
         }
     }
 }

@@ -5,6 +5,7 @@ use crate::real::{Complex, Real};
 
 /// An ideal transformer: the voltage at the source side is `ratio` times that at the load side.
 #[derive(Clone, Copy, PartialEq, Debug)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Transformer<R> {
     /// Turns ratio n, source side to load side.
     pub ratio: R,

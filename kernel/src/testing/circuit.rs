@@ -103,7 +103,7 @@ pub(crate) fn line_of(impedance: f64, turns_per_hertz: u64, nepers: f64) -> Part
             impedance: scalar(impedance),
             admittance: scalar(1.0 / impedance),
             turns_per_hertz,
-            root_loss: scalar(nepers / 2.0 / f64::from(HERTZ).sqrt()),
+            root_loss: scalar(nepers / f64::from(HERTZ).sqrt()),
             linear_loss: Scalar::ZERO,
         }),
         matrix: [cosh, sinh * impedance, sinh / impedance, cosh],

@@ -19,8 +19,12 @@ pub mod checksum;
 pub mod console;
 pub mod count;
 pub mod exit;
+pub mod file;
+pub mod logged;
+pub mod points;
 pub mod seven_stages;
 pub mod stack;
+pub mod words;
 
 pub use argument::argument;
 #[cfg(target_arch = "arm")]

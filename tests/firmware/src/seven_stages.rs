@@ -96,9 +96,17 @@ const fn shunt_capacitor(farads: f64) -> Stage<f64> {
 const ZERO: Complex<f64> = Complex { re: 0.0, im: 0.0 };
 
 const fn rising(im: f64, re: f64) -> Law<f64> {
-    Law { constant: 0.0, rising: Complex { re, im }, falling: ZERO }
+    Law {
+        constant: 0.0,
+        rising: Complex { re, im },
+        falling: ZERO,
+    }
 }
 
 const fn falling(im: f64, re: f64) -> Law<f64> {
-    Law { constant: 0.0, rising: ZERO, falling: Complex { re, im } }
+    Law {
+        constant: 0.0,
+        rising: ZERO,
+        falling: Complex { re, im },
+    }
 }

@@ -8,7 +8,8 @@ use core::hint::black_box;
 use stagebits_firmware::seven_stages::{chain, scalar};
 use stagebits_firmware::{console, count, entry, exit, print};
 use stagebits_kernel::{
-    Chain, Complex, FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State, Step, Word,
+    Chain, Complex, FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State, Step,
+    TwoPort, Walk, Word,
 };
 
 /// Frequencies and loads that spreads are taken over.
@@ -72,6 +73,7 @@ fn matrix(step: &Step<Complex<f32>>) -> Matrix {
             [[a, z * (one + a)], [y, a]]
         }
         Step::Stretch { ratio, inverse } => [[c(ratio), zero], [zero, c(inverse)]],
+        Step::TwoPort(TwoPort { a, b, c: y, d }) => [[c(a), c(b)], [c(y), c(d)]],
     }
 }
 
@@ -81,7 +83,10 @@ fn products(matrices: &[Matrix; 7], load: C32) -> C32 {
     for next in &matrices[1..] {
         let [[a, b], [c, d]] = whole;
         let [[e, f], [g, h]] = *next;
-        whole = [[a * e + b * g, a * f + b * h], [c * e + d * g, c * f + d * h]];
+        whole = [
+            [a * e + b * g, a * f + b * h],
+            [c * e + d * g, c * f + d * h],
+        ];
     }
     let one = C32::new(1.0, 0.0);
     let (v, i) = (one + load, one - load);
@@ -115,6 +120,27 @@ fn fixed<W: Word>(bits: &str) {
             black_box(walk(black_box(&point), black_box(load)));
         })
     });
+    for (index, step) in resolve::<W>(&chain, FREQUENCIES[2])
+        .steps()
+        .iter()
+        .enumerate()
+    {
+        let mut state = State::<W>::from_load(Gamma {
+            re: 1 << 28,
+            im: -(1 << 29),
+        });
+        let count = count::instructions(|| black_box(&mut state).pass(black_box(step)));
+        print!("{bits} step-{index} {count}\n");
+    }
+    print!(
+        "{bits} load {}\n",
+        count::instructions(|| {
+            black_box(State::<W>::from_load(black_box(Gamma {
+                re: 1 << 28,
+                im: -(1 << 29),
+            })));
+        })
+    );
     spread(&concat(bits, "resolve"), |hertz, _| {
         count::instructions(|| {
             black_box(resolve::<W>(black_box(&chain), black_box(hertz)));
@@ -128,7 +154,11 @@ fn fixed<W: Word>(bits: &str) {
     });
     spread(&concat(bits, "whole"), |hertz, load| {
         count::instructions(|| {
-            black_box(whole::<W>(black_box(&chain), black_box(hertz), black_box(load)));
+            black_box(whole::<W>(
+                black_box(&chain),
+                black_box(hertz),
+                black_box(load),
+            ));
         })
     });
 }
@@ -137,7 +167,10 @@ fn float() {
     let chain = chain(|x| x as f32);
     let to_float = |load: Gamma| {
         let unit = 1.0 / (1 << 30) as f32;
-        Complex { re: load.re as f32 * unit, im: load.im as f32 * unit }
+        Complex {
+            re: load.re as f32 * unit,
+            im: load.im as f32 * unit,
+        }
     };
     spread("f32 walk", |hertz, load| {
         let point = resolve_float(&chain, hertz);
@@ -161,7 +194,11 @@ fn float() {
     spread("f32 whole", |hertz, load| {
         let load = to_float(load);
         count::instructions(|| {
-            black_box(whole_float(black_box(&chain), black_box(hertz), black_box(load)));
+            black_box(whole_float(
+                black_box(&chain),
+                black_box(hertz),
+                black_box(load),
+            ));
         })
     });
 }

@@ -10,7 +10,9 @@ use stagebits_firmware::{argument, count, entry, exit, print};
 #[entry]
 fn main() -> ! {
     let mut buffer = [0; 64];
-    let ending = argument(&mut buffer);
+    let Ok(ending) = argument(&mut buffer).to_str() else {
+        exit::failure("the argument is not UTF-8");
+    };
     print!("ending: {ending}\n");
     match ending {
         "success" => exit::success(),
