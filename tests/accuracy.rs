@@ -9,11 +9,11 @@ use stagebits::arithmetic::{Arithmetic, Single, to_complex};
 use stagebits::budget::{Budget, budget};
 use stagebits::chain_file::read;
 use stagebits::comparison::{Comparison, ComparisonPoint};
-use stagebits::constants::{self, CAPACITY};
+use stagebits::constants::{self, Constants};
 use stagebits::envelope::{Effort, Envelope, Point, Survey};
-use stagebits::plan::Plan;
+use stagebits::plan::{Plan, Switches};
 use stagebits::reference::{FrequencyPoint, Reference};
-use stagebits_kernel::{Bits, Chain, Word};
+use stagebits_kernel::{Bits, Word};
 
 const BUOY: &str = "tide-gauge-buoy";
 const METER: &str = "handheld-impedance-meter";
@@ -25,7 +25,7 @@ const EFFORT: Effort = Effort {
 };
 
 /// A shipped example with its constants.
-fn example(name: &str) -> (Plan, Chain<f64, CAPACITY>) {
+fn example(name: &str) -> (Plan, Constants<f64>) {
     let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("../examples");
     let plan = read(&folder.join(name).with_extension("toml"));
     let plan = plan.unwrap_or_else(|fault| panic!("{fault}"));
@@ -81,9 +81,9 @@ impl Survey for SingleSurvey<'_> {
     type Prepared = (FrequencyPoint, <Single as Arithmetic>::Point);
     type Kept = f64;
 
-    fn prepare(&self, hertz: u32) -> Self::Prepared {
-        let reference = self.reference.at(f64::from(hertz));
-        (reference, self.single.at(hertz))
+    fn prepare(&self, hertz: u32, switches: &Switches) -> Self::Prepared {
+        let reference = self.reference.at_state(f64::from(hertz), switches);
+        (reference, self.single.at_state(hertz, switches))
     }
 
     fn empty(&self) -> f64 {
@@ -125,9 +125,9 @@ impl<W: Word> Survey for Sums<'_, W> {
     type Prepared = (ComparisonPoint<W>, FrequencyPoint);
     type Kept = f64;
 
-    fn prepare(&self, hertz: u32) -> Self::Prepared {
-        let reference = self.reference.at(f64::from(hertz));
-        (self.comparison.at(hertz), reference)
+    fn prepare(&self, hertz: u32, switches: &Switches) -> Self::Prepared {
+        let reference = self.reference.at_state(f64::from(hertz), switches);
+        (self.comparison.at_state(hertz, switches), reference)
     }
 
     fn empty(&self) -> f64 {

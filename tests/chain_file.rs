@@ -1,5 +1,9 @@
 //! The chain file: what is read, what is refused and where, and the chains in `examples/`.
 
+#[path = "chain_file/bank_faults.rs"]
+mod bank_faults;
+#[path = "chain_file/bank_values.rs"]
+mod bank_values;
 #[path = "chain_file/examples.rs"]
 mod examples;
 #[path = "chain_file/file_faults.rs"]

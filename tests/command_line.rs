@@ -19,6 +19,8 @@ mod permissions;
 mod repeatability;
 #[path = "command_line/response.rs"]
 mod response;
+#[path = "command_line/switches.rs"]
+mod switches;
 #[path = "command_line/text.rs"]
 mod text;
 #[path = "command_line/usage.rs"]
@@ -35,8 +37,9 @@ use tempfile::TempDir;
 
 const COMMANDS: [&str; 2] = ["respond", "budget"];
 
-const EXAMPLES: [&str; 3] = [
+const EXAMPLES: [&str; 4] = [
     "handheld-impedance-meter",
+    "mountain-hut-tuner",
     "shore-station",
     "tide-gauge-buoy",
 ];

@@ -100,7 +100,7 @@ fn expected() -> Vec<String> {
         lines.extend(point::<i32>(&chain, hertz, load));
         lines.extend(point::<i16>(&chain, hertz, load));
     }
-    lines.push(format!("{:?}", image::decode::<7>(b"no image at all")));
+    lines.push(format!("{:?}", image::decode::<7, 0>(b"no image at all")));
     lines
 }
 

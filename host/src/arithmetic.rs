@@ -2,17 +2,22 @@
 
 use num_complex::Complex;
 use stagebits_kernel as kernel;
-use stagebits_kernel::{Chain, FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State};
+use stagebits_kernel::{FloatState, Frequency, Gamma, Immittance, Resolved, Scalar, State};
 use stagebits_kernel::{Walk, Word};
 
-use crate::constants::{self, CAPACITY};
+use crate::constants::{self, CAPACITY, Constants};
+use crate::plan::Switches;
 
 /// A chain in some arithmetic, ready to be evaluated at any frequency.
 pub trait Arithmetic: Sync {
     /// The chain at one frequency.
     type Point;
-    /// Resolves the chain at one frequency.
-    fn at(&self, hertz: u32) -> Self::Point;
+    /// Resolves the chain at one frequency, all steps of its banks off.
+    fn at(&self, hertz: u32) -> Self::Point {
+        self.at_state(hertz, &Switches::OFF)
+    }
+    /// Resolves the chain at one frequency with its banks in this state.
+    fn at_state(&self, hertz: u32, switches: &Switches) -> Self::Point;
     /// Γ at the input for a load.
     fn gamma(point: &Self::Point, load: Gamma) -> Complex<f64>;
 }
@@ -20,13 +25,13 @@ pub trait Arithmetic: Sync {
 /// Block fixed point with words of type `W`.
 pub struct Block<W> {
     /// The constants, each rounded to a word.
-    pub stored: Chain<Scalar, CAPACITY>,
+    pub stored: Constants<Scalar>,
     word: std::marker::PhantomData<W>,
 }
 
 impl<W: Word> Block<W> {
     /// The chain with its constants rounded to words of type `W`.
-    pub fn new(exact: &Chain<f64, CAPACITY>) -> Self {
+    pub fn new(exact: &Constants<f64>) -> Self {
         Self {
             stored: constants::rounded(exact, W::BITS),
             word: std::marker::PhantomData,
@@ -37,8 +42,9 @@ impl<W: Word> Block<W> {
 impl<W: Word> Arithmetic for Block<W> {
     type Point = Resolved<Immittance<W>, CAPACITY>;
 
-    fn at(&self, hertz: u32) -> Self::Point {
-        self.stored.at(&Frequency::new(hertz))
+    fn at_state(&self, hertz: u32, switches: &Switches) -> Self::Point {
+        self.stored
+            .at_state(&Frequency::new(hertz), &switches.words)
     }
 
     fn gamma(point: &Self::Point, load: Gamma) -> Complex<f64> {
@@ -48,12 +54,12 @@ impl<W: Word> Arithmetic for Block<W> {
 
 /// The kernel's stages and walk in `f32`.
 pub struct Single {
-    chain: Chain<f32, CAPACITY>,
+    chain: Constants<f32>,
 }
 
 impl Single {
     /// The chain with its constants rounded to `f32`.
-    pub fn new(exact: &Chain<f64, CAPACITY>) -> Self {
+    pub fn new(exact: &Constants<f64>) -> Self {
         Self {
             chain: constants::single(exact),
         }
@@ -63,8 +69,9 @@ impl Single {
 impl Arithmetic for Single {
     type Point = Resolved<kernel::Complex<f32>, CAPACITY>;
 
-    fn at(&self, hertz: u32) -> Self::Point {
-        self.chain.at_float(&Frequency::new(hertz))
+    fn at_state(&self, hertz: u32, switches: &Switches) -> Self::Point {
+        self.chain
+            .at_float_state(&Frequency::new(hertz), &switches.words)
     }
 
     fn gamma(point: &Self::Point, load: Gamma) -> Complex<f64> {
@@ -83,12 +90,12 @@ impl Arithmetic for Single {
 /// Not the reference: it walks the same equivalent circuits as the firmware. Where it leaves the
 /// reference, an equivalent circuit or a constant is wrong, not a rounding.
 pub struct Double {
-    chain: Chain<f64, CAPACITY>,
+    chain: Constants<f64>,
 }
 
 impl Double {
     /// The chain with these constants.
-    pub fn new(exact: &Chain<f64, CAPACITY>) -> Self {
+    pub fn new(exact: &Constants<f64>) -> Self {
         Self {
             chain: exact.clone(),
         }
@@ -98,8 +105,9 @@ impl Double {
 impl Arithmetic for Double {
     type Point = Resolved<kernel::Complex<f64>, CAPACITY>;
 
-    fn at(&self, hertz: u32) -> Self::Point {
-        self.chain.at_float(&Frequency::new(hertz))
+    fn at_state(&self, hertz: u32, switches: &Switches) -> Self::Point {
+        self.chain
+            .at_float_state(&Frequency::new(hertz), &switches.words)
     }
 
     fn gamma(point: &Self::Point, load: Gamma) -> Complex<f64> {

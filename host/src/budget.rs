@@ -1,12 +1,12 @@
 //! The budget: how wrong the words are over the envelope, and which stage and source it is.
 
 use num_complex::Complex;
-use stagebits_kernel::{Chain, Word};
+use stagebits_kernel::Word;
 
 use crate::comparison::{Comparison, ComparisonPoint, Split};
-use crate::constants::CAPACITY;
+use crate::constants::Constants;
 use crate::envelope::{Effort, Envelope, Point, Survey};
-use crate::plan::{Accuracy, Plan};
+use crate::plan::{Accuracy, Plan, Switches};
 
 /// Largest closure that the rounding of `f64` can account for.
 pub const CLOSURE_LIMIT: f64 = 1e-12;
@@ -104,7 +104,7 @@ impl Budget {
 }
 
 /// Works out the budget of `plan` in words of type `W`.
-pub fn budget<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort) -> Budget {
+pub fn budget<W: Word>(plan: &Plan, exact: &Constants<f64>, effort: Effort) -> Budget {
     let comparison = Comparison::<W>::new(plan, exact);
     let envelope = Envelope::new(plan);
     let mut tally = envelope.run(
@@ -115,7 +115,8 @@ pub fn budget<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort
         },
     );
     let mut evaluations = tally.total.count;
-    let error = |point: Point| magnitude(comparison.at(point.hertz).error(point.load));
+    let at = |point: &Point| comparison.at_state(point.hertz, &point.switches);
+    let error = |point: Point| magnitude(at(&point).error(point.load));
     let mut worst = tally.worst[0];
     for (index, (_, start)) in tally.worst.iter().enumerate() {
         let seed = effort.seed.wrapping_add(index as u64);
@@ -125,7 +126,7 @@ pub fn budget<W: Word>(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort
             worst = (value, point);
         }
     }
-    let split = comparison.at(worst.1.hertz).split(worst.1.load);
+    let split = at(&worst.1).split(worst.1.load);
     tally.closure = tally.closure.max(split.closure());
     tally.finish(W::BITS, effort, evaluations, worst.1, split)
 }
@@ -152,8 +153,8 @@ impl<W: Word> Survey for BudgetSurvey<'_, W> {
     type Prepared = ComparisonPoint<W>;
     type Kept = Tally;
 
-    fn prepare(&self, hertz: u32) -> Self::Prepared {
-        self.comparison.at(hertz)
+    fn prepare(&self, hertz: u32, switches: &Switches) -> Self::Prepared {
+        self.comparison.at_state(hertz, switches)
     }
 
     fn empty(&self) -> Tally {

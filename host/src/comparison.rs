@@ -7,13 +7,11 @@
 
 use num_complex::Complex;
 use stagebits_kernel as kernel;
-use stagebits_kernel::{
-    Chain, Frequency, Gamma, Immittance, Resolved, Scalar, Step, TwoPort, Word,
-};
+use stagebits_kernel::{Frequency, Gamma, Immittance, Resolved, Scalar, Step, TwoPort, Word};
 
 use crate::arithmetic::{self, Arithmetic, Block, state_values, to_complex};
-use crate::constants::{self, CAPACITY};
-use crate::plan::Plan;
+use crate::constants::{self, CAPACITY, Constants};
+use crate::plan::{Plan, Switches};
 use crate::reference::{FrequencyPoint, Matrix, Reference, State};
 
 /// Where an error can come from within a stage, in the order in which words replace `f64`.
@@ -85,10 +83,10 @@ pub struct Comparison<'plan, W> {
     reference: Reference<'plan>,
     block: Block<W>,
     /// The words' values, to be walked in `f64`.
-    stored: Chain<f64, CAPACITY>,
+    stored: Constants<f64>,
 }
 
-/// A [`Comparison`] at one frequency.
+/// A [`Comparison`] at one frequency, in one state of the banks.
 pub struct ComparisonPoint<W: Word> {
     reference: FrequencyPoint,
     words: Resolved<Immittance<W>, CAPACITY>,
@@ -99,7 +97,7 @@ pub struct ComparisonPoint<W: Word> {
 
 impl<'plan, W: Word> Comparison<'plan, W> {
     /// Prepares both sides; `exact` are the constants of `plan`.
-    pub fn new(plan: &'plan Plan, exact: &Chain<f64, CAPACITY>) -> Self {
+    pub fn new(plan: &'plan Plan, exact: &Constants<f64>) -> Self {
         let block = Block::new(exact);
         let stored = block.stored.map(constants::value);
         Self {
@@ -109,13 +107,19 @@ impl<'plan, W: Word> Comparison<'plan, W> {
         }
     }
 
-    /// Both sides at one frequency.
+    /// Both sides at one frequency, all steps of the banks off.
     pub fn at(&self, hertz: u32) -> ComparisonPoint<W> {
-        let reference = self.reference.at(f64::from(hertz));
-        let words = self.block.at(hertz);
+        self.at_state(hertz, &Switches::OFF)
+    }
+
+    /// Both sides at one frequency with the banks in this state.
+    pub fn at_state(&self, hertz: u32, switches: &Switches) -> ComparisonPoint<W> {
+        let reference = self.reference.at_state(f64::from(hertz), switches);
+        let words = self.block.at_state(hertz, switches);
         let rounded: Frequency<Scalar> = Frequency::new(hertz);
-        let stored = self.stored.at_float(&Frequency::new(hertz));
-        let frequency = self.stored.at_float(&rounded.map(constants::value));
+        let resolved = |frequency| self.stored.at_float_state(&frequency, &switches.words);
+        let stored = resolved(Frequency::new(hertz));
+        let frequency = resolved(rounded.map(constants::value));
         let partial = (0..words.steps().len())
             .map(|k| {
                 let before = reference.prefixes[k];

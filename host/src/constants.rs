@@ -4,22 +4,33 @@
 //! is worked out in `f64` ([`exact`]) and then rounded to what the target stores: words of W bits
 //! ([`rounded`]) or `f32` ([`single`]).
 
+mod bank;
+
 use std::f64::consts::TAU;
 
 use stagebits_kernel as kernel;
 use stagebits_kernel::{Chain, Complex, Law, LossyReactor, Scalar, StubFunction};
 
-use crate::plan::{Arrangement, Branch, Line, Loss, Part, Plan, Position, Reactor, Termination};
+use crate::plan::{
+    Arrangement, BANK_STEPS_MAX, Branch, Line, Loss, Part, Plan, Position, Reactor, Termination,
+};
 
 /// Capacity of the chains that the desktop works with.
 pub const CAPACITY: usize = crate::plan::STAGE_CAPACITY;
 
+/// Steps of banks that they have room for: those of full banks only.
+pub const STEP_CAPACITY: usize = CAPACITY * BANK_STEPS_MAX;
+
+/// A chain of constants, as the desktop works with it.
+pub type Constants<R> = Chain<R, CAPACITY, STEP_CAPACITY>;
+
 /// The chain with its constants in `f64`.
 ///
 /// # Panics
-/// If the plan has more stages than [`CAPACITY`], or a parallel branch whose coil and capacitor
-/// both have a constant series resistance; the chain file reader lets neither through.
-pub fn exact(plan: &Plan) -> Chain<f64, CAPACITY> {
+/// If the plan has more stages than [`CAPACITY`], a bank without steps or with more than
+/// [`BANK_STEPS_MAX`], or a parallel branch whose coil and capacitor both have a constant series
+/// resistance; the chain file reader lets none of them through.
+pub fn exact(plan: &Plan) -> Constants<f64> {
     let reference = plan.reference;
     let stages: Vec<_> = plan
         .stages
@@ -36,18 +47,25 @@ pub fn exact(plan: &Plan) -> Chain<f64, CAPACITY> {
                 ratio: *ratio,
                 inverse: ratio.recip(),
             }),
+            Part::Bank(position, bank) => {
+                kernel::Stage::Bank(bank::bank(*position, bank, reference))
+            }
         })
         .collect();
-    Chain::new(&stages).expect("a plan has at most CAPACITY stages")
+    let banks = plan.banks();
+    let steps: Vec<_> = banks
+        .flat_map(|(_, bank)| bank::steps(bank, reference))
+        .collect();
+    Chain::with_banks(&stages, &steps).expect("a plan has at most CAPACITY stages and full banks")
 }
 
 /// The chain with each constant rounded to a word of `word_bits` and an exponent.
-pub fn rounded(chain: &Chain<f64, CAPACITY>, word_bits: u32) -> Chain<Scalar, CAPACITY> {
+pub fn rounded(chain: &Constants<f64>, word_bits: u32) -> Constants<Scalar> {
     chain.map(|constant| word(constant, word_bits))
 }
 
 /// The chain with each constant rounded to `f32`.
-pub fn single(chain: &Chain<f64, CAPACITY>) -> Chain<f32, CAPACITY> {
+pub fn single(chain: &Constants<f64>) -> Constants<f32> {
     chain.map(|constant| constant as f32)
 }
 

@@ -1,11 +1,16 @@
-//! The envelope: which frequencies and loads are tried, and the search for the worst of them.
+//! The envelope: which frequencies, loads and states of banks are tried, and the search for the
+//! worst of them.
 //!
 //! A run of n points takes about √n frequencies, the band's grid first and seeded random ones
-//! after, and at each of them loads from a fixed pattern and seeded random ones. From the worst
-//! points found, local ascent goes on. Where there is one load for each frequency, all of the points
-//! are frequencies. Each frequency has a random stream of its own and results
-//! are put together in the order of the frequencies, so that the figures depend on the seed and
-//! the number of points alone, not on the number of threads.
+//! after, and at each of them loads from a fixed pattern and seeded random ones. A chain with banks
+//! shares the points of a frequency out over about as many states as there are loads in each: all
+//! steps off, all on, and seeded random ones. From the worst points found, local ascent goes on.
+//! Where there is one load for each frequency, all of the points are frequencies, or states of
+//! banks at these. Each frequency has a random stream of its own and results are put together in
+//! the order of the frequencies, so that the figures depend on the seed and the number of points
+//! alone, not on the number of threads.
+
+mod states;
 
 use std::f64::consts::TAU;
 
@@ -16,14 +21,16 @@ use rayon::prelude::*;
 use stagebits_kernel::Gamma;
 
 use crate::arithmetic::{to_complex, to_gamma};
-use crate::plan::{Band, Loads, Plan};
+use crate::plan::{Band, Loads, Plan, Switches};
 use crate::reference;
+use states::States;
 
 /// What to try.
 #[derive(Clone, Debug)]
 pub struct Envelope {
     band: Band,
     loads: LoadSet,
+    states: States,
 }
 
 #[derive(Clone, Debug)]
@@ -45,24 +52,26 @@ pub struct Effort {
     pub seed: u64,
 }
 
-/// A frequency with a load.
+/// A frequency with a load and a state of the banks.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct Point {
     /// Frequency in hertz.
     pub hertz: u32,
     /// Load, referred to R0.
     pub load: Gamma,
+    /// Which steps of the banks are on.
+    pub switches: Switches,
 }
 
 /// What is done with the points of one frequency.
 pub trait Survey: Sync {
-    /// What depends on the frequency alone.
+    /// What depends on the frequency and the state of the banks alone.
     type Prepared;
     /// What is kept of one frequency's points; parts are merged in order.
     type Kept: Send;
 
-    /// Prepares a frequency.
-    fn prepare(&self, hertz: u32) -> Self::Prepared;
+    /// Prepares a frequency in a state of the banks.
+    fn prepare(&self, hertz: u32, switches: &Switches) -> Self::Prepared;
     /// An empty record.
     fn empty(&self) -> Self::Kept;
     /// Takes in one point.
@@ -92,16 +101,14 @@ impl Envelope {
         Self {
             band: plan.band,
             loads,
+            states: States::of(plan),
         }
     }
 
     /// Shows every point to the survey.
     pub fn run<S: Survey>(&self, effort: Effort, survey: &S) -> S::Kept {
         let frequencies = self.frequency_count(effort.points);
-        let loads = match &self.loads {
-            LoadSet::ByFrequency(..) => 1,
-            _ => effort.points.div_ceil(frequencies),
-        };
+        let (states, loads) = self.state_and_load_count(effort.points.div_ceil(frequencies));
         (0..frequencies as usize)
             .into_par_iter()
             .map(|index| {
@@ -109,11 +116,19 @@ impl Envelope {
                 let mut random = ChaCha8Rng::seed_from_u64(effort.seed);
                 random.set_stream(index);
                 let hertz = self.frequency(index, &mut random);
-                let prepared = survey.prepare(hertz);
                 let mut kept = survey.empty();
-                for load in 0..loads {
-                    let load = self.load(hertz, load, loads, &mut random);
-                    survey.take(&prepared, Point { hertz, load }, &mut kept);
+                for state in 0..states {
+                    let switches = self.states.draw(state, &mut random);
+                    let prepared = survey.prepare(hertz, &switches);
+                    for load in 0..loads {
+                        let load = self.load(hertz, load, loads, &mut random);
+                        let point = Point {
+                            hertz,
+                            load,
+                            switches,
+                        };
+                        survey.take(&prepared, point, &mut kept);
+                    }
                 }
                 kept
             })
@@ -129,7 +144,8 @@ impl Envelope {
     /// Climbs from `start` towards larger values of `error`; returns the highest point, its value
     /// and the number of evaluations.
     ///
-    /// Random steps of a size that halves after a run of failures, frequency and load by turns.
+    /// Random steps of a size that halves after a run of failures, frequency and load by turns, and
+    /// now and then a step of a bank switched over.
     pub fn ascend(
         &self,
         start: Point,
@@ -160,7 +176,7 @@ impl Envelope {
 
     fn frequency_count(&self, points: u64) -> u64 {
         let root = match &self.loads {
-            LoadSet::ByFrequency(..) => points,
+            LoadSet::ByFrequency(..) if self.states.is_single() => points,
             _ => (points as f64).sqrt().ceil() as u64,
         };
         let span = u64::from(self.band.to - self.band.from) + 1;
@@ -168,6 +184,19 @@ impl Envelope {
             .min(points)
             .min(span.max(1))
             .max(1)
+    }
+
+    /// Over how many states, and loads in each, the points of one frequency are shared out.
+    fn state_and_load_count(&self, points: u64) -> (u64, u64) {
+        match &self.loads {
+            LoadSet::ByFrequency(..) if self.states.is_single() => (1, 1),
+            LoadSet::ByFrequency(..) => (points, 1),
+            _ if self.states.is_single() => (1, points),
+            _ => {
+                let states = (points as f64).sqrt().ceil() as u64;
+                (states, points.div_ceil(states))
+            }
+        }
     }
 
     /// The grid first, random frequencies after.
@@ -233,6 +262,7 @@ impl Envelope {
                 }
             }
         }
+        self.states.flip(&mut point.switches, random);
         point
     }
 }

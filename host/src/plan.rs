@@ -4,6 +4,10 @@
 //! the image turns it into firmware words, and the envelope is drawn from its band and loads.
 //! Values here have been checked by [`crate::chain_file`]: finite, in range, of the right dimension.
 
+mod bank;
+
+pub use bank::{BANK_STEPS_MAX, Bank, BankElement, BankStep, StepLoss, Switches};
+
 use crate::touchstone::OnePort;
 
 /// Speed of light in vacuum, m/s (SI definition).
@@ -110,9 +114,11 @@ pub enum Part {
         /// Turns ratio, radio side to load side, positive.
         ratio: f64,
     },
+    /// Switched coils or capacitors, in series or in shunt.
+    Bank(Position, Bank),
 }
 
-/// Where a branch or stub sits.
+/// Where a branch, a stub or a bank sits.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Position {
     /// In the through path.

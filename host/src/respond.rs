@@ -1,12 +1,12 @@
 //! What a chain does over its band with one load: in `f64`, and beside it the firmware's words.
 
 use num_complex::Complex;
-use stagebits_kernel::{Chain, Gamma, Word};
+use stagebits_kernel::{Gamma, Word};
 
 use crate::arithmetic::{to_complex, to_gamma};
 use crate::comparison::Comparison;
-use crate::constants::CAPACITY;
-use crate::plan::Plan;
+use crate::constants::Constants;
+use crate::plan::{Plan, Switches};
 use crate::reference::{self, Matrix, Reference, SParameters};
 
 /// The response over the grid of the band.
@@ -16,6 +16,8 @@ pub struct Response {
     pub word_bits: u32,
     /// The load, where it is the same at every frequency.
     pub load: Option<Complex<f64>>,
+    /// Which steps of the banks are on.
+    pub switches: Switches,
     /// One entry per grid frequency.
     pub points: Vec<ResponsePoint>,
 }
@@ -47,7 +49,8 @@ pub struct ResponsePoint {
     pub word_gamma: Complex<f64>,
 }
 
-/// Evaluates `plan` over its grid with a load of `load` (Γ), the firmware in words of type `W`.
+/// Evaluates `plan` over its grid with a load of `load` (Γ) and its banks in the state `switches`,
+/// the firmware in words of type `W`.
 ///
 /// Without `load`, the plan's own load at each frequency is taken. Loads are rounded to the format
 /// in which firmware takes them, and both sides see that.
@@ -56,8 +59,9 @@ pub struct ResponsePoint {
 /// If there is no `load` and the plan's loads are a set.
 pub fn respond<W: Word>(
     plan: &Plan,
-    exact: &Chain<f64, CAPACITY>,
+    exact: &Constants<f64>,
     load: Option<Complex<f64>>,
+    switches: &Switches,
 ) -> Response {
     let comparison = Comparison::<W>::new(plan, exact);
     let reference = Reference::new(plan);
@@ -69,13 +73,14 @@ pub fn respond<W: Word>(
                 let own = reference::load_gamma(&plan.loads, plan.reference, f64::from(hertz));
                 to_gamma(own.expect("one load per frequency, over the whole band"))
             });
-            let word_gamma = comparison.at(hertz).word_gamma(load);
-            point(plan, &reference, hertz, load, word_gamma)
+            let word_gamma = comparison.at_state(hertz, switches).word_gamma(load);
+            point(plan, &reference, hertz, load, switches, word_gamma)
         })
         .collect();
     Response {
         word_bits: W::BITS,
         load: load.map(to_complex),
+        switches: *switches,
         points,
     }
 }
@@ -85,10 +90,11 @@ fn point(
     reference: &Reference<'_>,
     hertz: u32,
     load: Gamma,
+    switches: &Switches,
     word_gamma: Complex<f64>,
 ) -> ResponsePoint {
     let load = to_complex(load);
-    let at = reference.at(f64::from(hertz));
+    let at = reference.at_state(f64::from(hertz), switches);
     let input = at.input_state(load);
     let gamma = input.gamma();
     let powers: Vec<f64> = at.states(load).iter().map(|state| state.power()).collect();
@@ -104,7 +110,7 @@ fn point(
             .windows(2)
             .map(|side| 10.0 * (side[0] / side[1]).log10())
             .collect(),
-        abcd: reference::chain_matrix(&plan.stages, f64::from(hertz)),
+        abcd: reference::chain_matrix_at_state(&plan.stages, f64::from(hertz), switches),
         s: at.s_parameters(),
         word_gamma,
     }

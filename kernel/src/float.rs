@@ -14,6 +14,8 @@ macro_rules! real {
         impl Real for $float {
             const ZERO: Self = 0.0;
             const ONE: Self = 1.0;
+            // 2^60, whose square is in range, and which moves Γ by less than the last digit
+            const HUGE: Self = (1_u64 << 60) as Self;
             #[inline]
             fn from_hertz(hertz: u32) -> Self {
                 hertz as $float
@@ -63,6 +65,24 @@ macro_rules! real {
             #[inline(always)]
             fn is_zero(self) -> bool {
                 self == 0.0
+            }
+            // a number has an exponent of its own, so that a unit is of no use
+            type Term = Self;
+            #[inline(always)]
+            fn unit(self) -> i32 {
+                0
+            }
+            #[inline(always)]
+            fn term(self, _: i32) -> Self {
+                self
+            }
+            #[inline(always)]
+            fn coarser(term: Self, _: u32) -> Self {
+                term
+            }
+            #[inline(always)]
+            fn from_term(term: Self, _: i32) -> Self {
+                term
             }
         }
     };
@@ -183,10 +203,20 @@ impl<R: Real> Walk<Complex<R>> for FloatState<R> {
     }
 }
 
-impl<R: Real, const N: usize> Chain<R, N> {
-    /// The chain at one frequency in floating point.
+impl<R: Real, const N: usize, const S: usize> Chain<R, N, S> {
+    /// The chain at one frequency in floating point, with all steps of its banks off.
     #[inline]
     pub fn at_float(&self, frequency: &Frequency<R>) -> Resolved<Complex<R>, N> {
-        self.resolve(frequency, |step| step)
+        self.at_float_state(frequency, &[])
+    }
+
+    /// The same with the banks in this state; see [`Chain::at_state`].
+    #[inline]
+    pub fn at_float_state(
+        &self,
+        frequency: &Frequency<R>,
+        switches: &[u16],
+    ) -> Resolved<Complex<R>, N> {
+        self.resolve(frequency, switches, |step| step)
     }
 }

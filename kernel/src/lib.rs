@@ -49,13 +49,14 @@ mod real;
 mod scalar;
 mod stage;
 mod state;
+mod switched;
 #[cfg(test)]
 mod testing;
 mod two_port;
 mod walk;
 mod word;
 
-pub use chain::{Chain, Resolved, TooManyStages};
+pub use chain::{Chain, ChainError, Resolved};
 #[cfg(feature = "float")]
 pub use float::FloatState;
 pub use frequency::Frequency;
@@ -64,10 +65,11 @@ pub use readout::{ChainMatrix, Decibels, Drive, Gamma, Moments, Scattering, Swr}
 pub use real::{Complex, Real};
 pub use scalar::Scalar;
 pub use stage::{
-    Branch, Law, Line, LossyReactor, Position, Stage, Step, StepForm, Stub, StubFunction,
-    Transformer,
+    BANK_STEPS_MAX, Bank, BankElement, BankStep, Branch, Law, Line, LossyReactor, Position, Stage,
+    Step, StepForm, Stub, StubFunction, Transformer,
 };
 pub use state::State;
+pub use switched::Switched;
 pub use two_port::{TwoPort, TwoPortWords};
 pub use walk::Walk;
 pub use word::{Bits, DoubleWord, Word, round_shift};

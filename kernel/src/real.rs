@@ -1,6 +1,7 @@
 //! What a number must offer so that the stages can be resolved with it.
 
 use core::fmt::Debug;
+use core::ops::{Add, Sub};
 
 /// The numbers in which a stage turns its constants and the frequency into immittances.
 ///
@@ -11,6 +12,8 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
     const ZERO: Self;
     /// One.
     const ONE: Self;
+    /// Stands in for infinity: an immittance as good as an open or short circuit.
+    const HUGE: Self;
     /// A whole number of hertz.
     fn from_hertz(hertz: u32) -> Self;
     /// Product.
@@ -33,6 +36,25 @@ pub trait Real: Copy + Debug + PartialEq + Send + Sync + 'static {
     fn is_zero(self) -> bool;
     /// Whether 1/2 ≤ x < 2.
     fn is_near_one(self) -> bool;
+    /// A number in a unit that up to sixteen share, so that they are soon added up in ever new
+    /// selections.
+    type Term: Copy
+        + Debug
+        + Default
+        + PartialEq
+        + Send
+        + Sync
+        + 'static
+        + Add<Output = Self::Term>
+        + Sub<Output = Self::Term>;
+    /// The smallest power of two in units of which sixteen numbers up to this magnitude are added.
+    fn unit(self) -> i32;
+    /// The number in units of 2^unit, which is at least [`Real::unit`].
+    fn term(self, unit: i32) -> Self::Term;
+    /// The term in units 2^places times as large.
+    fn coarser(term: Self::Term, places: u32) -> Self::Term;
+    /// The number that is a sum of terms in units of 2^unit.
+    fn from_term(term: Self::Term, unit: i32) -> Self;
     /// Difference.
     #[inline(always)]
     fn minus(self, other: Self) -> Self {

@@ -145,6 +145,7 @@ impl Scalar {
 impl Real for Scalar {
     const ZERO: Self = Self::ZERO;
     const ONE: Self = Self::ONE;
+    const HUGE: Self = Self::HUGE;
 
     #[inline]
     fn from_hertz(hertz: u32) -> Self {
@@ -262,7 +263,53 @@ impl Real for Scalar {
     fn is_zero(self) -> bool {
         self.mantissa == 0
     }
+
+    /// Sixteen terms of up to 2^58 leave a sum two bits short of an overflow.
+    type Term = i64;
+
+    #[inline]
+    fn unit(self) -> i32 {
+        if self.is_zero() {
+            return UNIT_MIN;
+        }
+        (self.exponent - TERM_GUARD).min(UNIT_MAX)
+    }
+
+    #[inline]
+    fn term(self, unit: i32) -> i64 {
+        if self.is_zero() {
+            return 0;
+        }
+        let left = self.exponent - unit;
+        if left > TERM_GUARD {
+            // beyond what units are made for
+            let most = (i32::MAX as i64) << TERM_GUARD;
+            return if self.mantissa < 0 { -most } else { most };
+        }
+        if left >= 0 {
+            return (self.mantissa as i64) << left;
+        }
+        round_shift(self.mantissa as i64, left.unsigned_abs())
+    }
+
+    #[inline]
+    fn coarser(term: i64, places: u32) -> i64 {
+        round_shift(term, places)
+    }
+
+    #[inline]
+    fn from_term(term: i64, unit: i32) -> Self {
+        Self::from_i64(term, unit)
+    }
 }
+
+/// Bits of a term below those of the largest mantissa.
+const TERM_GUARD: i32 = 27;
+/// Unit of the terms where all numbers are zero: below that of every other.
+const UNIT_MIN: i32 = i32::MIN / 2;
+/// Unit of the terms of numbers of 2^32 and above, which are taken to be 2^32: no word length can
+/// tell either from an open or short circuit.
+const UNIT_MAX: i32 = 32 - TERM_GUARD - SIGNIFICANT as i32;
 
 /// Nearest integer to 2^61 / m for 2^30 < m < 2^31.
 ///

@@ -277,6 +277,6 @@ fn reciprocal(stage: &Stage<Uncertain>) -> Option<Stage<Uncertain>> {
             immittance: stub.immittance.reciprocal(),
             ..*stub
         })),
-        Stage::Line(_) | Stage::Transformer(_) => None,
+        Stage::Line(_) | Stage::Transformer(_) | Stage::Bank(_) => None,
     }
 }

@@ -7,6 +7,7 @@
 
 use stagebits_kernel::Real;
 use std::f64::consts::{FRAC_PI_2, TAU};
+use std::ops::{Add, Sub};
 
 /// Half a unit of a scalar's last place over the scalar: what one operation adds at most.
 const SCALAR: f64 = 1.0 / (1_u64 << 31) as f64;
@@ -25,7 +26,7 @@ const OPEN: f64 = stagebits::reference::IDEAL;
 
 /// A number, and the largest distance of the kernel's own from it; infinite where the kernel may
 /// be on either side of a pole.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub(crate) struct Uncertain {
     /// The exact number.
     pub(crate) value: f64,
@@ -75,6 +76,11 @@ impl Real for Uncertain {
         value: 1.0,
         error: 0.0,
         nearest: 1.0,
+    };
+    const HUGE: Self = Self {
+        value: OPEN,
+        error: f64::INFINITY,
+        nearest: OPEN,
     };
 
     fn from_hertz(hertz: u32) -> Self {
@@ -182,5 +188,40 @@ impl Real for Uncertain {
     /// The kernel has only the word.
     fn is_near_one(self) -> bool {
         (0.5..2.0).contains(&self.nearest)
+    }
+
+    // sums of terms are exact to far more places than any other operation
+    type Term = Self;
+
+    fn unit(self) -> i32 {
+        0
+    }
+
+    fn term(self, _: i32) -> Self {
+        self
+    }
+
+    fn coarser(term: Self, _: u32) -> Self {
+        term
+    }
+
+    fn from_term(term: Self, _: i32) -> Self {
+        term
+    }
+}
+
+impl Add for Uncertain {
+    type Output = Self;
+
+    fn add(self, other: Self) -> Self {
+        self.plus(other)
+    }
+}
+
+impl Sub for Uncertain {
+    type Output = Self;
+
+    fn sub(self, other: Self) -> Self {
+        self.minus(other)
     }
 }

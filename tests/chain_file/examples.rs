@@ -52,7 +52,7 @@ fn the_file_in_the_documentation_is_read() {
     let lines = block.expect("a block of TOML").lines();
     let text: Vec<_> = lines.map(|line| line.trim_start_matches("//! ")).collect();
     let plan = parse(&text.join("\n"), "documentation").unwrap_or_else(|fault| panic!("{fault}"));
-    assert_eq!(plan.stages.len(), 5);
+    assert_eq!(plan.stages.len(), 7);
 }
 
 #[test]
@@ -121,6 +121,33 @@ fn meter_ends_in_a_filter_and_a_test_lead() {
     });
     use Position::{Series, Shunt};
     assert!(filter.eq([Shunt, Series, Shunt, Series, Shunt]));
+}
+
+#[test]
+fn hut_tuner_has_an_l_of_eight_coils_and_eight_capacitors() {
+    let plan = example("mountain-hut-tuner.toml");
+    assert_eq!((plan.band.from, plan.band.to), (1_800_000, 30_000_000));
+    let banks: Vec<_> = plan
+        .stages
+        .iter()
+        .filter_map(|stage| match &stage.part {
+            Part::Bank(position, bank) => Some((*position, bank)),
+            _ => None,
+        })
+        .collect();
+    let [(Position::Series, coils), (Position::Shunt, capacitors)] = banks[..] else {
+        panic!("{banks:?}")
+    };
+    assert_eq!(coils.element, BankElement::Coils);
+    assert_eq!(capacitors.element, BankElement::Capacitors);
+    for bank in [coils, capacitors] {
+        assert_eq!(bank.steps.len(), 8);
+        assert!(bank.steps.iter().all(|step| step.loss > 0.0));
+        assert!(bank.contact > 0.0 && bank.stray > 0.0);
+    }
+    // the largest coil is far from resonance with its open contact at the top of the band
+    let omega = std::f64::consts::TAU * f64::from(plan.band.to);
+    assert!(omega * omega * coils.steps[7].value * coils.stray < 0.5);
 }
 
 #[test]

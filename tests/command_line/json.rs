@@ -48,6 +48,7 @@ fn response_has_its_keys() {
                 "points",
                 "reference_ohm",
                 "stages",
+                "switches",
                 "title",
                 "version",
                 "word_bits",
@@ -125,7 +126,13 @@ fn budget_has_its_keys() {
         assert!(budget["accuracy"]["met"].is_boolean());
         keys(&budget["envelope"], &["ascent_points", "points", "seed"]);
         keys(&budget["closure"], &["largest", "limit"]);
-        keys(&budget["worst"], &["hertz", "load_gamma", "load_ohm"]);
+        keys(
+            &budget["worst"],
+            &["hertz", "load_gamma", "load_ohm", "switches"],
+        );
+        for bank in items(&budget["worst"]["switches"]) {
+            keys(bank, &["stage", "steps", "word"]);
+        }
         complex(&budget["worst"]["load_gamma"]);
         complex(&budget["worst"]["load_ohm"]);
 

@@ -26,6 +26,7 @@ pub(crate) fn stage(part: Part) -> Stage {
         Part::Line(_) => "line",
         Part::Stub(..) => "stub",
         Part::Transformer { .. } => "transformer",
+        Part::Bank(..) => "bank",
     };
     Stage {
         name: name.to_owned(),

@@ -4,10 +4,10 @@ use std::collections::BTreeSet;
 use std::path::{Path, PathBuf};
 use std::{fs, io};
 
-use stagebits::constants::{self, CAPACITY};
+use stagebits::constants::{self, Constants};
 use stagebits::plan::Plan;
+use stagebits_kernel::Scalar;
 use stagebits_kernel::image::{self, Header};
-use stagebits_kernel::{Chain, Scalar};
 
 use crate::points::Band;
 
@@ -68,7 +68,7 @@ fn chain_files(folder: &Path) -> io::Result<Vec<PathBuf>> {
 
 impl Case {
     /// The chain with its constants as they are.
-    pub(crate) fn exact(&self) -> Chain<f64, CAPACITY> {
+    pub(crate) fn exact(&self) -> Constants<f64> {
         constants::exact(&self.plan)
     }
 

@@ -3,10 +3,12 @@
 use std::collections::{BTreeSet, HashSet};
 
 use stagebits::arithmetic::{Arithmetic, Block, to_complex};
+use stagebits::plan::Switches;
 use stagebits_kernel::{Branch, Gamma, Immittance, Law, LossyReactor, Stage, Word};
 
 use super::cases::{Case, cases};
 use super::listing::{Line, listing};
+use crate::points::{BANKS, switches};
 use crate::words::Subject;
 
 // The kinds of step as the words tell them.
@@ -75,6 +77,20 @@ fn every_kind_of_stage_is_compared() {
             ));
         }
     }
+    for position in ["Series", "Shunt"] {
+        for element in ["Coils", "Capacitors"] {
+            for (proportional, closed, open) in [
+                (true, "real", "real"),
+                (false, "real", "ideal"),
+                (false, "ideal", "real"),
+            ] {
+                expected.insert(format!(
+                    "bank {position} {element}, proportional {proportional}, \
+                     {closed} closed and {open} open"
+                ));
+            }
+        }
+    }
     for direction in ["up", "down", "one to one"] {
         expected.insert(format!("transformer {direction}"));
     }
@@ -119,6 +135,17 @@ fn kind(stage: &Stage<f64>) -> String {
             ratio if ratio < 1.0 => "transformer down".into(),
             _ => "transformer one to one".into(),
         },
+        Stage::Bank(bank) => {
+            let ideal = |part: f64| if part == 0.0 { "ideal" } else { "real" };
+            format!(
+                "bank {:?} {:?}, proportional {}, {} closed and {} open",
+                bank.position,
+                bank.element,
+                bank.proportional,
+                ideal(bank.contact),
+                ideal(bank.stray)
+            )
+        }
     }
 }
 
@@ -175,9 +202,11 @@ fn words_compared_are_those_that_the_budget_judges() {
     fn check<W: Word>(case: &Case) {
         let block = Block::<W>::new(&case.exact());
         for (hertz, load, gamma) in points(&lines::<W>(case)) {
+            let mut state = Switches::OFF;
+            state.words[..BANKS].copy_from_slice(&switches(hertz));
             assert_eq!(
                 to_complex(gamma),
-                Block::<W>::gamma(&block.at(hertz), load),
+                Block::<W>::gamma(&block.at_state(hertz, &state), load),
                 "{}, {} bits, {hertz} Hz, {load:?}",
                 case.name,
                 W::BITS
@@ -187,6 +216,21 @@ fn words_compared_are_those_that_the_budget_judges() {
     for case in cases() {
         check::<i16>(&case);
         check::<i32>(&case);
+    }
+}
+
+/// The states that a tuner tries one after the other are those that it gets one by one.
+#[test]
+fn states_switched_to_are_those_resolved_alone() {
+    for case in cases() {
+        for lines in [lines::<i16>(&case), lines::<i32>(&case)] {
+            let of_chain = lines
+                .iter()
+                .filter(|line| line.place.subject == Subject::Chain);
+            for line in of_chain {
+                assert_eq!(line.word("switched alike"), 1, "{}", line.place);
+            }
+        }
     }
 }
 

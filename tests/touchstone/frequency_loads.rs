@@ -10,7 +10,7 @@ use stagebits::chain_file::{parse, read};
 use stagebits::comparison::Comparison;
 use stagebits::constants;
 use stagebits::envelope::{Effort, Envelope, Point, Survey};
-use stagebits::plan::{Loads, Plan};
+use stagebits::plan::{Loads, Plan, Switches};
 use stagebits::reference::load_gamma;
 use stagebits::touchstone;
 
@@ -54,7 +54,7 @@ impl Survey for Collect {
     type Prepared = u32;
     type Kept = Vec<Point>;
 
-    fn prepare(&self, hertz: u32) -> u32 {
+    fn prepare(&self, hertz: u32, _: &Switches) -> u32 {
         hertz
     }
 
@@ -187,7 +187,15 @@ fn a_single_frequency_has_a_single_point() {
     let points = Envelope::new(&plan).run(effort, &Collect);
     let hertz = plan.band.from;
     let load = to_gamma(gamma(&plan, f64::from(hertz)));
-    assert_eq!(points, [Point { hertz, load }]);
+    let switches = Switches::OFF;
+    assert_eq!(
+        points,
+        [Point {
+            hertz,
+            load,
+            switches
+        }]
+    );
 }
 
 /// The budget's worst point has the load of its frequency, and none of the grid is worse.

@@ -10,8 +10,8 @@ const ARRANGEMENT: Key = Key::new("arrangement", r#"arrangement = "series""#);
 pub(super) const RESISTANCE: Key = Key::new("resistance", r#"resistance = "50 ohm""#);
 pub(super) const INDUCTANCE: Key = Key::new("inductance", r#"inductance = "1.2 uH""#);
 pub(super) const CAPACITANCE: Key = Key::new("capacitance", r#"capacitance = "100 pF""#);
-const Q: Key = Key::new("q", "q = 180");
-const ESR: Key = Key::new("esr", r#"esr = "0.2 ohm""#);
+pub(super) const Q: Key = Key::new("q", "q = 180");
+pub(super) const ESR: Key = Key::new("esr", r#"esr = "0.2 ohm""#);
 const INDUCTOR_Q: Key = Key::new("inductor_q", "inductor_q = 180");
 const INDUCTOR_ESR: Key = Key::new("inductor_esr", r#"inductor_esr = "0.2 ohm""#);
 const CAPACITOR_Q: Key = Key::new("capacitor_q", "capacitor_q = 1000");
@@ -20,6 +20,14 @@ const CAPACITOR_ESR: Key = Key::new("capacitor_esr", r#"capacitor_esr = "0.1 ohm
 pub(super) const ELEMENTS: [Key; 3] = [RESISTANCE, INDUCTANCE, CAPACITANCE];
 const INDUCTOR_LOSS: [Key; 2] = [INDUCTOR_Q, INDUCTOR_ESR];
 const CAPACITOR_LOSS: [Key; 2] = [CAPACITOR_Q, CAPACITOR_ESR];
+/// Which Q are no slips of the pen, in words.
+pub(super) const Q_RANGE: &str = "from 0.001 to 1e9";
+
+/// The same in numbers.
+pub(super) fn q_is_in_range(q: f64) -> bool {
+    (1e-3..=1e9).contains(&q)
+}
+
 /// Loss of the only reactor, whichever it is.
 const ONLY_LOSS: [Key; 2] = [Q, ESR];
 
@@ -142,7 +150,7 @@ fn reactor(
     let loss = match table.at_most_one(&[own_q, own_esr, Q, ESR])? {
         None => Loss::Lossless,
         Some(loss) if [own_q.name, Q.name].contains(&loss.key().name) => {
-            Loss::Q(loss.number("from 0.001 to 1e9", |q| (1e-3..=1e9).contains(&q))?)
+            Loss::Q(loss.number(Q_RANGE, q_is_in_range)?)
         }
         Some(loss) => Loss::Esr(loss.quantity(Dimension::Resistance)?),
     };

@@ -24,7 +24,16 @@
 //! shunt_stub = { end = "open", impedance = "50 ohm", length = "0.5 m", velocity = 0.66 }
 //! [[stage]]
 //! transformer = { ratio = 3 }       # voltage at the radio side ÷ voltage at the load side
+//! [[stage]]
+//! shunt_bank = { capacitances = ["10 pF", "22 pF", "47 pF"], q = 1000, contact = "0.05 ohm", stray = "0.5 pF" }
+//! [[stage]]
+//! series_bank = { inductances = { first = "60 nH", steps = 8 }, q = 150, contact = "0.05 ohm", stray = "1 pF" }
 //! ```
+//!
+//! A bank is up to 16 coils or capacitors that relays switch, see [`crate::plan::Bank`]. Its values
+//! are a list, or the first of `steps` values each twice the one before. `q` or `esr` is one value
+//! for all steps or a list of one for each; `contact` is the resistance of each closed contact and
+//! `stray` the capacitance of each open one.
 //!
 //! The loads are one of
 //!
@@ -41,6 +50,7 @@
 //! [`Dimension::limits`](crate::quantity::Dimension::limits). The first fault found is reported with
 //! its line and column; nothing is corrected silently.
 
+mod bank;
 mod branch;
 mod line;
 mod load;

@@ -1,5 +1,6 @@
 //! One `[[stage]]`: a name and exactly one kind of two-port.
 
+use super::bank::bank;
 use super::branch::branch;
 use super::line::{line, stub};
 use super::table::Key;
@@ -23,6 +24,14 @@ const SHUNT_STUB: Key = Key::new(
     r#"shunt_stub = { end = "short", impedance = "50 ohm", length = "0.5 m", velocity = 0.66 }"#,
 );
 const TRANSFORMER: Key = Key::new("transformer", "transformer = { ratio = 3 }");
+const SERIES_BANK: Key = Key::new(
+    "series_bank",
+    r#"series_bank = { inductances = ["60 nH", "120 nH"], q = 150, contact = "0.05 ohm" }"#,
+);
+const SHUNT_BANK: Key = Key::new(
+    "shunt_bank",
+    r#"shunt_bank = { capacitances = ["10 pF", "22 pF"], q = 1000, stray = "0.5 pF" }"#,
+);
 const RATIO: Key = Key::new("ratio", "ratio = 3");
 
 /// A kind of two-port: its key, how a stage without a name is called, and how it is read.
@@ -32,7 +41,7 @@ struct Kind(
     fn(&Value<'_>) -> Result<Part, Diagnostic>,
 );
 
-const KINDS: [Kind; 6] = [
+const KINDS: [Kind; 8] = [
     Kind(LINE, "line", |value| line(value).map(Part::Line)),
     Kind(SERIES, "series branch", |value| {
         branch(value).map(|branch| Part::Branch(Position::Series, branch))
@@ -47,6 +56,12 @@ const KINDS: [Kind; 6] = [
         stub(value).map(|(end, line)| Part::Stub(Position::Shunt, end, line))
     }),
     Kind(TRANSFORMER, "transformer", transformer),
+    Kind(SERIES_BANK, "series bank", |value| {
+        bank(value).map(|bank| Part::Bank(Position::Series, bank))
+    }),
+    Kind(SHUNT_BANK, "shunt bank", |value| {
+        bank(value).map(|bank| Part::Bank(Position::Shunt, bank))
+    }),
 ];
 
 /// Reads the stage that is `number` from the radio side, counted from 1.

@@ -211,6 +211,16 @@ impl<'a> Value<'a> {
         in_order(self.entries()?).into_iter().map(entry).collect()
     }
 
+    /// Whether it is a table.
+    pub(super) fn is_table(&self) -> bool {
+        matches!(self.node.get_ref(), DeValue::Table(_))
+    }
+
+    /// Whether it is an array.
+    pub(super) fn is_array(&self) -> bool {
+        matches!(self.node.get_ref(), DeValue::Array(_))
+    }
+
     fn entries(&self) -> Result<&'a DeTable<'a>, Diagnostic> {
         match self.node.get_ref() {
             DeValue::Table(entries) => Ok(entries),

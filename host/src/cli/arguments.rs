@@ -36,6 +36,10 @@ pub struct Respond {
     /// Load impedance as 'R, X' [default: the first load listed, else the reference resistance].
     #[arg(long, value_name = "R, X", allow_hyphen_values = true)]
     pub load: Option<String>,
+    /// State of the banks, a word for each from the radio side, bit 0 for the first step
+    /// [default: all steps off].
+    #[arg(long, value_name = "WORD, ...", allow_hyphen_values = true)]
+    pub switches: Option<String>,
 }
 
 /// Arguments of `budget`.

@@ -2,6 +2,7 @@
 
 mod arguments;
 mod run;
+mod switches;
 
 pub use arguments::Arguments;
 pub use run::{Failure, Outcome, run};

@@ -6,6 +6,7 @@ use num_complex::Complex;
 use stagebits_kernel::Bits;
 
 use super::arguments::{self, Arguments, Command, Common};
+use super::switches::parse_switches;
 use crate::budget::{Budget, budget};
 use crate::chain_file;
 use crate::constants;
@@ -13,7 +14,7 @@ use crate::diagnostic::Diagnostic;
 use crate::envelope::Effort;
 use crate::output::file::Destination;
 use crate::output::{json, text};
-use crate::plan::{Loads, Plan};
+use crate::plan::{Loads, Plan, Switches};
 use crate::quantity::{self, Dimension};
 use crate::reference;
 use crate::respond::respond;
@@ -73,10 +74,17 @@ fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
         Loads::SwrUpTo(_) => Some(Complex::new(plan.reference, 0.0)),
         Loads::Measured(_) | Loads::SeriesModel(_) => None,
     });
+    let switches = match &request.switches {
+        Some(words) => parse_switches(words, &plan).map_err(Failure::Usage)?,
+        None => Switches::OFF,
+    };
     let destination = destination(&request.common)?;
     let exact = constants::exact(&plan);
     let gamma = one_load.map(|load| reference::gamma_from_impedance(load, plan.reference));
-    let response = with_word!(plan.firmware.word_bits, respond(&plan, &exact, gamma));
+    let response = with_word!(
+        plan.firmware.word_bits,
+        respond(&plan, &exact, gamma, &switches)
+    );
     let rendering = if request.common.json {
         json::response(&plan, &response)
     } else {

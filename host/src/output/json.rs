@@ -7,7 +7,7 @@ use serde_json::{Value, json};
 use crate::arithmetic::to_complex;
 use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
 use crate::comparison::StageSource;
-use crate::plan::Plan;
+use crate::plan::{Plan, Switches};
 use crate::reference::{Matrix, SParameters, impedance_from_gamma};
 use crate::respond::Response;
 
@@ -43,6 +43,7 @@ pub fn response(plan: &Plan, response: &Response) -> String {
         "title": plan.title,
         "reference_ohm": plan.reference,
         "word_bits": response.word_bits,
+        "switches": switches(plan, &response.switches),
         "stages": plan.stages.iter().map(|stage| &stage.name).collect::<Vec<_>>(),
         "points": points,
     }))
@@ -83,6 +84,7 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
             "hertz": budget.worst.hertz,
             "load_gamma": complex(load),
             "load_ohm": complex(impedance_from_gamma(load, plan.reference)),
+            "switches": switches(plan, &budget.worst.switches),
         },
         "closure": { "largest": budget.closure, "limit": CLOSURE_LIMIT },
         "total": line(&budget.total),
@@ -91,6 +93,16 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
         "stages": stages,
         "sources": by_source(&budget.by_source, line),
     }))
+}
+
+/// The word of each bank, whose bit k is set if the step k, counted from 0, is on.
+fn switches(plan: &Plan, switches: &Switches) -> Vec<Value> {
+    plan.banks()
+        .zip(switches.words)
+        .map(|((stage, bank), word)| {
+            json!({ "stage": stage.name, "steps": bank.steps.len(), "word": word & bank.all_on() })
+        })
+        .collect()
 }
 
 fn by_source(

@@ -7,7 +7,7 @@ use super::table::Table;
 use crate::arithmetic::to_complex;
 use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
 use crate::comparison::StageSource;
-use crate::plan::Plan;
+use crate::plan::{Plan, Switches};
 use crate::reference::impedance_from_gamma;
 use crate::respond::Response;
 
@@ -24,12 +24,16 @@ pub fn response(plan: &Plan, response: &Response) -> String {
         |load| ohms(impedance_from_gamma(load, plan.reference)),
     );
     let mut text = format!(
-        "{}\nload {}, reference {}\n|ΔΓ|: words of {} bits against f64\n\n",
+        "{}\nload {}, reference {}\n|ΔΓ|: words of {} bits against f64\n",
         shortened(&plan.title, WIDTH),
         load,
         engineering(plan.reference, "ohm", 4),
         response.word_bits,
     );
+    for line in switches(plan, &response.switches) {
+        let _ = writeln!(text, "{line}");
+    }
+    text.push('\n');
     let mut table = Table::of_figures([
         "MHz", "|Γ|", "∠Γ °", "R ohm", "X ohm", "SWR", "RL dB", "gain dB", "|ΔΓ|",
     ]);
@@ -118,6 +122,9 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
             ohms(impedance_from_gamma(load, plan.reference)),
         ),
     );
+    for (index, word) in switches(plan, &budget.worst.switches).enumerate() {
+        line(if index == 0 { "switches" } else { "" }, word);
+    }
     line(
         "points",
         format!(
@@ -172,6 +179,16 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
     }
     text.push_str(&table.text(2));
     text
+}
+
+/// The state of each bank as its name and a binary number, the last step first.
+fn switches(plan: &Plan, switches: &Switches) -> impl Iterator<Item = String> {
+    plan.banks()
+        .zip(switches.words)
+        .map(|((stage, bank), word)| {
+            let (name, steps) = (shortened(&stage.name, NAME_WIDTH), bank.steps.len());
+            format!("{name} 0b{:0steps$b}", word & bank.all_on())
+        })
 }
 
 /// A share in tenths of a percent, without a sign where it rounds to zero.

@@ -17,8 +17,8 @@ pub const IDEAL: f64 = (1_u128 << 100) as f64;
 /// An impedance kept as a ratio, so that open and short are both finite.
 #[derive(Clone, Copy, Debug)]
 pub(super) struct Immittance {
-    numerator: Complex<f64>,
-    denominator: Complex<f64>,
+    pub(super) numerator: Complex<f64>,
+    pub(super) denominator: Complex<f64>,
 }
 
 impl Immittance {
@@ -84,7 +84,7 @@ fn ratio(numerator: Complex<f64>, denominator: Complex<f64>) -> Complex<f64> {
 }
 
 /// Impedance in ohms of a reactance with its loss in series.
-fn lossy_reactance(reactance: f64, loss: Loss) -> Complex<f64> {
+pub(super) fn lossy_reactance(reactance: f64, loss: Loss) -> Complex<f64> {
     let resistance = match loss {
         Loss::Lossless => 0.0,
         Loss::Q(q) => reactance.abs() / q,

@@ -22,6 +22,7 @@
 //! one line of 6000 dB does that, no chain of practical use comes near it.
 
 mod angle;
+mod bank;
 mod gamma;
 mod immittance;
 mod load;
@@ -39,7 +40,7 @@ pub use load::load_gamma;
 pub use matrix::Matrix;
 pub use point::{FrequencyPoint, Reference, input_gamma, input_impedance};
 pub use scattering::SParameters;
-pub use stage::{chain_matrix, stage_matrix};
+pub use stage::{chain_matrix, chain_matrix_at_state, stage_matrix, stage_matrix_at_state};
 
 use num_complex::Complex;
 

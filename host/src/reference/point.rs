@@ -1,7 +1,8 @@
 //! A chain at one frequency, made once and then used for any number of loads.
 
-use super::{Matrix, SParameters, State, stage_matrix};
-use crate::plan::{Plan, Stage};
+use super::stage::stage_matrices;
+use super::{Matrix, SParameters, State};
+use crate::plan::{Plan, Stage, Switches};
 use num_complex::Complex;
 
 /// A chain ready to be evaluated at any frequency.
@@ -20,12 +21,16 @@ impl<'plan> Reference<'plan> {
         }
     }
 
-    /// Everything about the chain at `hertz` > 0 that does not depend on the load.
+    /// Everything about the chain at `hertz` > 0 that does not depend on the load, with all steps
+    /// of its banks off.
     pub fn at(&self, hertz: f64) -> FrequencyPoint {
-        let stages: Vec<Matrix> = self
-            .stages
-            .iter()
-            .map(|stage| stage_matrix(stage, hertz).normalised(self.reference))
+        self.at_state(hertz, &Switches::OFF)
+    }
+
+    /// The same with the banks in this state.
+    pub fn at_state(&self, hertz: f64, switches: &Switches) -> FrequencyPoint {
+        let stages: Vec<Matrix> = stage_matrices(self.stages, hertz, switches)
+            .map(|matrix| matrix.normalised(self.reference))
             .collect();
         let mut prefixes = Vec::with_capacity(stages.len() + 1);
         let mut prefix = Matrix::IDENTITY;
@@ -108,12 +113,14 @@ fn apply(matrix: &Matrix, state: State) -> State {
 }
 
 /// Input reflection coefficient of `plan` at `hertz` > 0 for a load `gamma_load`, both referred to
-/// the reference resistance of the plan. For many loads at one frequency use [`Reference::at`].
+/// the reference resistance of the plan, all steps of banks off. For many loads at one frequency use
+/// [`Reference::at`].
 pub fn input_gamma(plan: &Plan, hertz: f64, gamma_load: Complex<f64>) -> Complex<f64> {
     Reference::new(plan).at(hertz).input_gamma(gamma_load)
 }
 
-/// Input impedance of `plan` in ohms at `hertz` > 0 for a load `gamma_load`; infinite for an open.
+/// Input impedance of `plan` in ohms at `hertz` > 0 for a load `gamma_load`, all steps of banks off;
+/// infinite for an open.
 pub fn input_impedance(plan: &Plan, hertz: f64, gamma_load: Complex<f64>) -> Complex<f64> {
     Reference::new(plan)
         .at(hertz)

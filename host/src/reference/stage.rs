@@ -2,11 +2,17 @@
 
 use super::immittance::Immittance;
 use super::{Matrix, angle};
-use crate::plan::{Line, Part, Position, Stage};
+use crate::plan::{Line, Part, Position, Stage, Switches};
 use num_complex::Complex;
 
-/// Ohmic chain matrix of one stage at `hertz` > 0.
+/// Ohmic chain matrix of one stage at `hertz` > 0, all its steps off if it is a bank.
 pub fn stage_matrix(stage: &Stage, hertz: f64) -> Matrix {
+    stage_matrix_at_state(stage, hertz, 0)
+}
+
+/// Ohmic chain matrix of one stage at `hertz` > 0 with, if it is a bank, the steps on whose bits are
+/// set in `word`.
+pub fn stage_matrix_at_state(stage: &Stage, hertz: f64, word: u16) -> Matrix {
     match &stage.part {
         Part::Branch(position, branch) => {
             two_terminal(*position, Immittance::of_branch(branch, hertz))
@@ -16,13 +22,35 @@ pub fn stage_matrix(stage: &Stage, hertz: f64) -> Matrix {
             two_terminal(*position, Immittance::of_stub(*termination, line, hertz))
         }
         Part::Transformer { ratio } => Matrix::transformer(*ratio),
+        Part::Bank(position, bank) => {
+            two_terminal(*position, Immittance::of_bank(bank, hertz, word))
+        }
     }
 }
 
-/// Ohmic chain matrix of `stages`, radio side first, at `hertz` > 0.
+/// Ohmic chain matrix of `stages`, radio side first, at `hertz` > 0 with all steps of banks off.
 pub fn chain_matrix(stages: &[Stage], hertz: f64) -> Matrix {
-    stages.iter().fold(Matrix::IDENTITY, |chain, stage| {
-        chain * stage_matrix(stage, hertz)
+    chain_matrix_at_state(stages, hertz, &Switches::OFF)
+}
+
+/// Ohmic chain matrix of `stages`, radio side first, at `hertz` > 0 with their banks in this state.
+pub fn chain_matrix_at_state(stages: &[Stage], hertz: f64, switches: &Switches) -> Matrix {
+    stage_matrices(stages, hertz, switches).fold(Matrix::IDENTITY, |chain, stage| chain * stage)
+}
+
+/// Ohmic chain matrix of each of `stages` at `hertz` > 0 with their banks in this state.
+pub(super) fn stage_matrices(
+    stages: &[Stage],
+    hertz: f64,
+    switches: &Switches,
+) -> impl Iterator<Item = Matrix> {
+    let mut words = switches.words.iter();
+    stages.iter().map(move |stage| {
+        let word = match &stage.part {
+            Part::Bank(..) => words.next().copied().unwrap_or(0),
+            _ => 0,
+        };
+        stage_matrix_at_state(stage, hertz, word)
     })
 }
 

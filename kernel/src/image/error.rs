@@ -4,6 +4,7 @@ use core::fmt;
 
 use super::header::Header;
 use super::{MAGIC, VERSION};
+use crate::stage::BANK_STEPS_MAX;
 
 /// Why bytes are no image of a chain, or a chain has no image.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -40,6 +41,13 @@ pub enum ImageError {
         /// Most that there is room for.
         capacity: usize,
     },
+    /// There is no room in the chain for the steps of a bank.
+    TooManySteps {
+        /// Which stage the bank is, counted from 1 at the source.
+        number: u8,
+        /// Most steps of all banks together that there is room for.
+        capacity: usize,
+    },
     /// A stage cannot be read or written.
     BadStage {
         /// Which one, counted from 1 at the source.
@@ -71,6 +79,8 @@ pub enum StageFault {
     UnknownField,
     /// A constant is not normalised, out of range, or stored in another form than its own.
     Constant,
+    /// It is a bank with this number of steps, which is not 1 to [`crate::BANK_STEPS_MAX`].
+    StepCount(u8),
 }
 
 impl fmt::Display for ImageError {
@@ -105,6 +115,10 @@ impl fmt::Display for ImageError {
             Self::TooManyStages { stages, capacity } => {
                 write!(f, "{stages} stages, where there is room for {capacity}")
             }
+            Self::TooManySteps { number, capacity } => write!(
+                f,
+                "no room for the steps of stage {number}: banks have room for {capacity} together"
+            ),
             Self::BadStage { number, fault } => write!(f, "stage {number} {fault}"),
             Self::TrailingBytes(bytes) => write!(
                 f,
@@ -127,6 +141,10 @@ impl fmt::Display for StageFault {
             Self::UnknownField => f.write_str("has a field that its kind does not have or need"),
             Self::Constant => f.write_str(
                 "has a constant that is not normalised, out of range or not in its shortest form",
+            ),
+            Self::StepCount(steps) => write!(
+                f,
+                "is a bank of {steps} steps, where 1 to {BANK_STEPS_MAX} are possible"
             ),
         }
     }

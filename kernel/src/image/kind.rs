@@ -5,7 +5,8 @@ use super::record::{CONSTANTS, Record};
 use crate::real::Complex;
 use crate::scalar::Scalar;
 use crate::stage::{
-    Branch, Law, Line, LossyReactor, Position, Stage, Stub, StubFunction, Transformer,
+    Bank, BankElement, Branch, Law, Line, LossyReactor, Position, Stage, Stub, StubFunction,
+    Transformer,
 };
 
 // kinds, in the lowest bits of the tag
@@ -14,15 +15,21 @@ const BRANCH: u8 = 1;
 const LINE: u8 = 2;
 const STUB: u8 = 3;
 const TRANSFORMER: u8 = 4;
+const BANK: u8 = 5;
+
+/// Constants of a bank beside those of its steps.
+pub(super) const BANK_CONSTANTS: usize = 2;
 
 // options above them
 const SHUNT: u8 = 1 << 3;
 const INVERTED: u8 = 1 << 4;
 const COTH: u8 = 1 << 4;
+const COILS: u8 = 1 << 4;
 const BESIDE: u8 = 1 << 5;
+const PROPORTIONAL: u8 = 1 << 5;
 const FALLING: u8 = 1 << 6;
 
-/// What a stage stores.
+/// What a stage stores, but for the steps of a bank.
 pub(super) fn record(stage: &Stage<Scalar>) -> Record {
     let mut tag = 0;
     let mut option = |is_set: bool, bit: u8| tag |= if is_set { bit } else { 0 };
@@ -82,6 +89,13 @@ pub(super) fn record(stage: &Stage<Scalar>) -> Record {
             option(true, TRANSFORMER);
             fill(&mut constants, [transformer.ratio, transformer.inverse]);
         }
+        Stage::Bank(bank) => {
+            option(true, BANK);
+            option(bank.position == Position::Shunt, SHUNT);
+            option(bank.element == BankElement::Coils, COILS);
+            option(bank.proportional, PROPORTIONAL);
+            fill::<BANK_CONSTANTS>(&mut constants, [bank.contact, bank.stray]);
+        }
     }
     Record {
         tag,
@@ -96,7 +110,7 @@ fn fill<const M: usize>(constants: &mut [Scalar; CONSTANTS], with: [Scalar; M]) 
     }
 }
 
-/// The stage that stores this.
+/// The stage that stores this; a bank is without steps.
 pub(super) fn stage(stored: &Record) -> Result<Stage<Scalar>, StageFault> {
     let option = |bit: u8| stored.tag & bit != 0;
     let position = if option(SHUNT) {
@@ -143,6 +157,18 @@ pub(super) fn stage(stored: &Record) -> Result<Stage<Scalar>, StageFault> {
         TRANSFORMER => Stage::Transformer(Transformer {
             ratio: a,
             inverse: b,
+        }),
+        BANK => Stage::Bank(Bank {
+            position,
+            element: if option(COILS) {
+                BankElement::Coils
+            } else {
+                BankElement::Capacitors
+            },
+            proportional: option(PROPORTIONAL),
+            steps: 0,
+            contact: a,
+            stray: b,
         }),
         unknown => return Err(StageFault::UnknownKind(unknown)),
     };

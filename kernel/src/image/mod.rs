@@ -34,6 +34,16 @@
 //! | 2, line | | | | | impedance, admittance, root loss, linear loss | yes |
 //! | 3, stub | shunt | coth, not tanh | | | immittance, root loss, linear loss | yes |
 //! | 4, transformer | | | | | ratio, inverse | |
+//! | 5, bank | shunt | coils | resistance as reactance | | contact, stray | |
+//!
+//! After a bank, its steps:
+//!
+//! | bytes | field |
+//! |------:|-------|
+//! | 1 | number of steps, 1 to 16 |
+//! | 1 | step 0: bits 0 and 1 whether its reactance and its resistance are not zero, bits 2 and 3 which of them are in full |
+//! | | the constants, lowest bit first |
+//! | | the same for every other step |
 //!
 //! A constant is a mantissa of B bits and an exponent, with 2^(B−2) ≤ |mantissa| < 2^(B−1) and the
 //! value mantissa · 2^(exponent + 2 − B), so that the exponent is that of the largest power of two
@@ -47,7 +57,8 @@
 //! Short exponents reach from −128 to 127, which is 2.9e-39 to 3.4e38 and takes in the constants
 //! of every part that can be built; full ones take in every [`Scalar`] that can be stored.
 //!
-//! A lossless coil takes five bytes in an image for 16-bit words, and a lossless line sixteen.
+//! A lossless coil takes five bytes in an image for 16-bit words, a lossless line sixteen, and each
+//! step of a bank seven with its loss.
 //!
 //! ```
 //! use stagebits_kernel::image::{self, Header};
@@ -73,9 +84,11 @@ mod error;
 mod header;
 mod kind;
 mod record;
+mod steps;
 
-use crate::chain::Chain;
+use crate::chain::{Chain, ChainError};
 use crate::scalar::Scalar;
+use crate::stage::Stage;
 use checksum::Checksum;
 use cursor::{Reader, Writer};
 use record::Record;
@@ -92,8 +105,12 @@ const CHECKSUM_LENGTH: usize = 4;
 const STAGES_MAX: usize = u8::MAX as usize;
 
 // the length of an image is written in two bytes
-const _: () =
-    assert!(HEADER_LENGTH + STAGES_MAX * Record::LENGTH_MAX + CHECKSUM_LENGTH <= u16::MAX as usize);
+const _: () = {
+    let bank = Record::length_max(kind::BANK_CONSTANTS) + steps::LENGTH_MAX;
+    let stage = Record::length_max(record::CONSTANTS);
+    let longest = if bank > stage { bank } else { stage };
+    assert!(HEADER_LENGTH + STAGES_MAX * longest + CHECKSUM_LENGTH <= u16::MAX as usize);
+};
 
 /// The chain of an image, and what the image says about it.
 ///
@@ -102,8 +119,10 @@ const _: () =
 ///
 /// # Errors
 /// [`ImageError`] unless the bytes are exactly what [`encode`] gives for a chain of up to `N`
-/// stages.
-pub fn decode<const N: usize>(bytes: &[u8]) -> Result<(Header, Chain<Scalar, N>), ImageError> {
+/// stages and `S` steps of banks.
+pub fn decode<const N: usize, const S: usize>(
+    bytes: &[u8],
+) -> Result<(Header, Chain<Scalar, N, S>), ImageError> {
     let (body, checksum) = bytes
         .split_last_chunk::<CHECKSUM_LENGTH>()
         .ok_or(ImageError::TooShort)?;
@@ -131,16 +150,39 @@ pub fn decode<const N: usize>(bytes: &[u8]) -> Result<(Header, Chain<Scalar, N>)
     let [stages] = reader.take().ok_or(ImageError::TooShort)?;
     let reference = u32::from_le_bytes(reader.take().ok_or(ImageError::TooShort)?);
     let header = Header::new(word_bits.into(), reference)?;
-    let too_many = |_| ImageError::TooManyStages {
-        stages: stages.into(),
-        capacity: N,
-    };
-    let mut chain = Chain::new(&[]).map_err(too_many)?;
+    let mut chain = Chain::empty();
+    let mut room = steps::Room::default();
     for number in 1..=stages {
-        let stage = Record::read(&mut reader, word_bits.into())
+        let bad_stage = |fault| ImageError::BadStage { number, fault };
+        let mut stage = Record::read(&mut reader, word_bits.into())
             .and_then(|record| kind::stage(&record))
-            .map_err(|fault| ImageError::BadStage { number, fault })?;
-        chain.push(stage).map_err(too_many)?;
+            .map_err(bad_stage)?;
+        let mut bank_steps: &[_] = &[];
+        if let Stage::Bank(bank) = &mut stage {
+            if S == 0 {
+                // no code for steps where there is no room for any
+                return Err(ImageError::TooManySteps {
+                    number,
+                    capacity: S,
+                });
+            }
+            bank_steps =
+                steps::read(&mut reader, word_bits.into(), &mut room).map_err(bad_stage)?;
+            bank.steps = bank_steps.len() as u8;
+        }
+        chain.push(stage, bank_steps).map_err(|error| match error {
+            ChainError::TooManySteps => ImageError::TooManySteps {
+                number,
+                capacity: S,
+            },
+            // the steps have been counted above
+            ChainError::TooManyStages | ChainError::BankSize | ChainError::StepCount => {
+                ImageError::TooManyStages {
+                    stages: stages.into(),
+                    capacity: N,
+                }
+            }
+        })?;
     }
     match reader.remaining() {
         0 => Ok((header, chain)),
@@ -152,8 +194,8 @@ pub fn decode<const N: usize>(bytes: &[u8]) -> Result<(Header, Chain<Scalar, N>)
 ///
 /// # Errors
 /// Those of [`encoded_len`], and [`ImageError::BufferTooSmall`]; `out` is then as it was.
-pub fn encode<const N: usize>(
-    chain: &Chain<Scalar, N>,
+pub fn encode<const N: usize, const S: usize>(
+    chain: &Chain<Scalar, N, S>,
     header: Header,
     out: &mut [u8],
 ) -> Result<usize, ImageError> {
@@ -172,15 +214,15 @@ pub fn encode<const N: usize>(
 /// # Errors
 /// [`ImageError::TooManyStages`] above 255, and [`ImageError::BadStage`] for a constant beyond what
 /// [`Scalar::from_parts`] accepts.
-pub fn encoded_len<const N: usize>(
-    chain: &Chain<Scalar, N>,
+pub fn encoded_len<const N: usize, const S: usize>(
+    chain: &Chain<Scalar, N, S>,
     header: Header,
 ) -> Result<usize, ImageError> {
     write(chain, header, 0, Writer::new(&mut []))
 }
 
-fn write<const N: usize>(
-    chain: &Chain<Scalar, N>,
+fn write<const N: usize, const S: usize>(
+    chain: &Chain<Scalar, N, S>,
     header: Header,
     length: u16,
     mut writer: Writer<'_>,
@@ -196,10 +238,19 @@ fn write<const N: usize>(
     writer.put(&length.to_le_bytes());
     writer.put(&[count]);
     writer.put(&header.reference_milliohms().to_le_bytes());
+    let mut bank_steps = chain.bank_steps();
     for (number, stage) in (1..=count).zip(stages) {
+        let bad_stage = |fault| ImageError::BadStage { number, fault };
         kind::record(stage)
             .write(&mut writer, word_bits)
-            .map_err(|fault| ImageError::BadStage { number, fault })?;
+            .map_err(bad_stage)?;
+        if let Stage::Bank(bank) = stage {
+            let (own, rest) = bank_steps
+                .split_at_checked(bank.steps.into())
+                .unwrap_or_default();
+            bank_steps = rest;
+            steps::write(own, &mut writer, word_bits).map_err(bad_stage)?;
+        }
     }
     Ok(writer.finish())
 }

@@ -24,8 +24,10 @@ pub(super) struct Record {
 }
 
 impl Record {
-    /// No record takes more bytes.
-    pub(super) const LENGTH_MAX: usize = 3 + CONSTANTS * Form::LENGTH_MAX + 8;
+    /// No record of a kind with this number of constants takes more bytes.
+    pub(super) const fn length_max(constants: usize) -> usize {
+        3 + constants * Form::LENGTH_MAX + 8
+    }
 
     pub(super) fn write(&self, writer: &mut Writer<'_>, word_bits: u32) -> Result<(), StageFault> {
         let (mut present, mut full) = (0, 0);
@@ -85,7 +87,7 @@ impl Record {
 }
 
 /// The form that the masks give the constant at this bit.
-fn form(present: u8, full: u8, bit: usize) -> Form {
+pub(super) fn form(present: u8, full: u8, bit: usize) -> Form {
     let bit = 1 << bit;
     match (present & bit != 0, full & bit != 0) {
         (false, _) => Form::Absent,

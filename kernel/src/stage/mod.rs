@@ -1,10 +1,13 @@
 //! The kinds of two-port, one file each, and what they become at one frequency.
 
+mod bank;
 mod branch;
 mod line;
 mod stub;
 mod transformer;
 
+pub use bank::{BANK_STEPS_MAX, Bank, BankElement, BankStep};
+pub(crate) use bank::{BankSum, Change};
 pub use branch::{Branch, Law, LossyReactor};
 pub use line::Line;
 pub use stub::{Stub, StubFunction};
@@ -39,6 +42,8 @@ pub enum Stage<R> {
     Stub(Stub<R>),
     /// An ideal transformer.
     Transformer(Transformer<R>),
+    /// Coils or capacitors that are switched in and out.
+    Bank(Bank<R>),
 }
 
 /// Immittances of some arithmetic, and what goes with them.
@@ -81,7 +86,7 @@ pub enum Step<Z: StepForm> {
 }
 
 impl<R: Real> Stage<R> {
-    /// The stage at one frequency; a line but for the sign of the state.
+    /// The stage at one frequency; a line but for the sign of the state, a bank without its steps.
     #[inline]
     pub fn at(&self, frequency: &Frequency<R>) -> Step<Complex<R>> {
         self.resolve(frequency).0
@@ -95,6 +100,17 @@ impl<R: Real> Stage<R> {
             Self::Line(line) => line.at(frequency),
             Self::Stub(stub) => (stub.at(frequency), false),
             Self::Transformer(transformer) => (transformer.step(), false),
+            Self::Bank(bank) => (bank.at(&[], frequency, &mut []).step(0, &[]), false),
+        }
+    }
+}
+
+impl<R> Stage<R> {
+    /// Number of steps that the stage has in the chain's table: those of a bank.
+    pub(crate) fn bank_steps(&self) -> usize {
+        match self {
+            Self::Bank(bank) => bank.steps.into(),
+            Self::Branch(_) | Self::Line(_) | Self::Stub(_) | Self::Transformer(_) => 0,
         }
     }
 }
@@ -123,6 +139,7 @@ impl<R: Copy> Stage<R> {
                 ratio: convert(transformer.ratio),
                 inverse: convert(transformer.inverse),
             }),
+            Self::Bank(bank) => Stage::Bank(bank.map(&mut convert)),
         }
     }
 }

@@ -4,11 +4,11 @@ use proptest::collection::vec;
 use proptest::prelude::*;
 use stagebits_kernel::image::Header;
 use stagebits_kernel::{
-    Branch, Chain, Complex, Law, Line, LossyReactor, Position, Scalar, Stage, Stub, StubFunction,
-    Transformer,
+    BANK_STEPS_MAX, Bank, BankElement, BankStep, Branch, Complex, Law, Line, LossyReactor,
+    Position, Scalar, Stage, Stub, StubFunction, Transformer,
 };
 
-use super::{CAPACITY, TestChain};
+use super::{CAPACITY, STEPS, TestChain};
 
 /// Headers of every word length.
 pub(crate) fn headers() -> impl Strategy<Value = Header> {
@@ -21,8 +21,27 @@ pub(crate) fn headers() -> impl Strategy<Value = Header> {
 ///
 /// Constants are zeros, words of W bits and of more, with small exponents and with any.
 pub(crate) fn chains(word_bits: u32) -> impl Strategy<Value = TestChain> {
-    vec(stages(constants(word_bits).boxed()), 0..=CAPACITY)
-        .prop_map(|stages| Chain::new(&stages).expect("as many as fit"))
+    let constants = constants(word_bits).boxed();
+    let steps = vec(bank_step(constants.clone()), STEPS);
+    (vec(stages(constants), 0..=CAPACITY), steps).prop_map(|(mut stages, steps)| {
+        let mut used = 0;
+        stages.retain(|stage| {
+            let Stage::Bank(bank) = stage else {
+                return true;
+            };
+            let fits = used + usize::from(bank.steps) <= STEPS;
+            used += if fits { bank.steps.into() } else { 0 };
+            fits
+        });
+        TestChain::with_banks(&stages, &steps[..used]).expect("as many as fit")
+    })
+}
+
+fn bank_step(constants: BoxedStrategy<Scalar>) -> impl Strategy<Value = BankStep<Scalar>> {
+    (constants.clone(), constants).prop_map(|(reactance, resistance)| BankStep {
+        reactance,
+        resistance,
+    })
 }
 
 fn constants(word_bits: u32) -> impl Strategy<Value = Scalar> {
@@ -71,6 +90,27 @@ fn stages(constants: BoxedStrategy<Scalar>) -> impl Strategy<Value = Stage<Scala
             falling,
         },
     );
+    let element = prop_oneof![Just(BankElement::Coils), Just(BankElement::Capacitors)];
+    let bank_constants = (constants.clone(), constants.clone());
+    let bank = (
+        position.clone(),
+        element,
+        any::<bool>(),
+        prop_oneof![3 => 1..=4_u8, 1 => 1..=BANK_STEPS_MAX],
+        bank_constants,
+    )
+        .prop_map(
+            |(position, element, proportional, steps, (contact, stray))| {
+                Stage::Bank(Bank {
+                    position,
+                    element,
+                    proportional,
+                    steps,
+                    contact,
+                    stray,
+                })
+            },
+        );
     let four = [(); 4].map(|()| constants.clone());
     prop_oneof![
         2 => (position.clone(), any::<bool>(), law, prop::option::of(beside)).prop_map(
@@ -113,5 +153,6 @@ fn stages(constants: BoxedStrategy<Scalar>) -> impl Strategy<Value = Stage<Scala
         1 => (constants.clone(), constants).prop_map(|(ratio, inverse)| {
             Stage::Transformer(Transformer { ratio, inverse })
         }),
+        1 => bank,
     ]
 }

@@ -13,7 +13,10 @@ fn images() -> Vec<Vec<u8>> {
     let mut images = vec![];
     for word_bits in [10, 16, 24, 32] {
         let header = Header::new(word_bits, 75_000).expect("both are in range");
-        images.push(encode(&super::TestChain::new(&[]).expect("empty"), header));
+        images.push(encode(
+            &super::TestChain::with_banks(&[], &[]).expect("empty"),
+            header,
+        ));
         let mut random: Vec<_> = (0..32)
             .map(|_| {
                 let chain = chains(word_bits).new_tree(&mut runner).expect("no filter");

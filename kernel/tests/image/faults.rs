@@ -1,7 +1,10 @@
 //! Every fault that a right checksum leaves, one by one.
 
 use stagebits_kernel::image::{self, Header, ImageError, StageFault};
-use stagebits_kernel::{Branch, Chain, Complex, Law, Line, Position, Scalar, Stage, Transformer};
+use stagebits_kernel::{
+    BANK_STEPS_MAX, Bank, BankElement, BankStep, Branch, Chain, Complex, Law, Line, Position,
+    Scalar, Stage, Transformer,
+};
 
 use super::{checksummed, decode, encode, image_of, sealed};
 
@@ -9,7 +12,7 @@ use super::{checksummed, decode, encode, image_of, sealed};
 const TRANSFORMER: [u8; 8] = [4, 0b11, 0x00, 0x40, 0, 0x00, 0x40, 0];
 
 /// The fault of the second of two stages, of which the first is right.
-fn fault_of(word_bits: u8, stage: &[u8]) -> Option<StageFault> {
+pub(crate) fn fault_of(word_bits: u8, stage: &[u8]) -> Option<StageFault> {
     // the same transformer at any length of mantissa
     let cut = usize::from(word_bits.div_ceil(8));
     let one = [&[0, 0, 0, 0x40][4 - cut..], &[0]].concat();
@@ -121,10 +124,16 @@ fn kinds_and_their_options_are_checked() {
             1 => None,
             2 | 4 if options == 0 => None,
             3 if options < 4 => None,
-            2..=4 => Some(StageFault::UnknownField),
+            5 if options < 8 => None,
+            2..=5 => Some(StageFault::UnknownField),
             unknown => Some(StageFault::UnknownKind(unknown)),
         };
-        assert_eq!(fault_of(16, &[tag, 0]), expected, "tag {tag:07b}");
+        let stage: &[u8] = if kind == 5 {
+            &[tag, 0, 1, 0]
+        } else {
+            &[tag, 0]
+        };
+        assert_eq!(fault_of(16, stage), expected, "tag {tag:07b}");
     }
 }
 
@@ -137,6 +146,7 @@ fn each_kind_has_its_own_constants() {
         (0b0000_0010, 0b1000_1111),
         (0b0000_0011, 0b1000_0111),
         (0b0000_0100, 0b0000_0011),
+        (0b0000_0101, 0b0000_0011),
     ] {
         for bit in 0..8 {
             let number: &[u8] = if bit == 7 {
@@ -144,7 +154,8 @@ fn each_kind_has_its_own_constants() {
             } else {
                 &[0x00, 0x40, 0]
             };
-            let stage = [&[tag, 1 << bit], number].concat();
+            let steps: &[u8] = if tag == 5 { &[1, 0] } else { &[] };
+            let stage = [&[tag, 1 << bit], number, steps].concat();
             let expected = (fields >> bit & 1 == 0).then_some(StageFault::UnknownField);
             assert_eq!(fault_of(16, &stage), expected, "tag {tag:07b}, bit {bit}");
         }
@@ -261,7 +272,7 @@ fn chains_beyond_an_image_are_refused() {
     }
     let most = Chain::<Scalar, 256>::new(&[one; 255]).expect("they fit");
     let bytes = encode(&most, header);
-    assert_eq!(image::decode::<256>(&bytes), Ok((header, most)));
+    assert_eq!(image::decode::<256, 0>(&bytes), Ok((header, most)));
     let chain = Chain::<Scalar, 256>::new(&[one; 256]).expect("they fit");
     let expected = ImageError::TooManyStages {
         stages: 256,
@@ -274,10 +285,11 @@ fn chains_beyond_an_image_are_refused() {
 #[test]
 fn small_parts_take_few_bytes() {
     let header = Header::new(16, 50_000).expect("both are in range");
-    let length = |stages: &[Stage<Scalar>]| {
-        let chain = super::TestChain::new(stages).expect("they fit");
+    let length_with = |stages: &[Stage<Scalar>], steps: &[BankStep<Scalar>]| {
+        let chain = super::TestChain::with_banks(stages, steps).expect("they fit");
         image::encoded_len(&chain, header)
     };
+    let length = |stages: &[Stage<Scalar>]| length_with(stages, &[]);
     let coil = Stage::Branch(Branch {
         position: Position::Series,
         inverted: false,
@@ -300,6 +312,27 @@ fn small_parts_take_few_bytes() {
     assert_eq!(length(&[]), Ok(17));
     assert_eq!(length(&[coil]), Ok(17 + 5));
     assert_eq!(length(&[line]), Ok(17 + 16));
+    let bank = |steps| {
+        Stage::Bank(Bank {
+            position: Position::Series,
+            element: BankElement::Coils,
+            proportional: true,
+            steps,
+            contact: Scalar::ZERO,
+            stray: Scalar::ZERO,
+        })
+    };
+    let step = BankStep {
+        reactance: Scalar::ONE.scaled(-20),
+        resistance: Scalar::ONE.scaled(-28),
+    };
+    for steps in 1..=BANK_STEPS_MAX {
+        let count = usize::from(steps);
+        assert_eq!(
+            length_with(&[bank(steps)], &vec![step; count]),
+            Ok(17 + 3 + 7 * count)
+        );
+    }
 }
 
 /// One message of each sort; a reader must be able to tell what to do.
@@ -324,6 +357,20 @@ fn messages_name_what_was_found_and_what_is_right() {
                 fault: StageFault::UnknownKind(7),
             },
             "stage 3 is of an unknown kind, 7",
+        ),
+        (
+            ImageError::BadStage {
+                number: 2,
+                fault: StageFault::StepCount(17),
+            },
+            "stage 2 is a bank of 17 steps, where 1 to 16 are possible",
+        ),
+        (
+            ImageError::TooManySteps {
+                number: 4,
+                capacity: 16,
+            },
+            "no room for the steps of stage 4: banks have room for 16 together",
         ),
     ] {
         assert_eq!(error.to_string(), message);

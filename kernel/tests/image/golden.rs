@@ -2,8 +2,8 @@
 
 use stagebits_kernel::image::Header;
 use stagebits_kernel::{
-    Branch, Complex, Law, Line, LossyReactor, Position, Scalar, Stage, Stub, StubFunction,
-    Transformer,
+    Bank, BankElement, BankStep, Branch, Complex, Law, Line, LossyReactor, Position, Scalar, Stage,
+    Stub, StubFunction, Transformer,
 };
 
 use super::{TestChain, decode, encode};
@@ -16,7 +16,7 @@ fn scalar(mantissa: i32, exponent: i32) -> Scalar {
 fn chain() -> TestChain {
     let zero = Scalar::ZERO;
     let one = Scalar::ONE;
-    TestChain::new(&[
+    let stages = [
         // a lossless coil of 1 µH on 50 ohms, 2π·1e-6/50, in 16 bits: 17271 · 2^-37
         Stage::Branch(Branch {
             position: Position::Series,
@@ -71,17 +71,36 @@ fn chain() -> TestChain {
             ratio: one.scaled(2),
             inverse: one.scaled(-2),
         }),
-    ])
-    .expect("it has room")
+        // coils with a resistance that rises with frequency, contacts of 2 and 2^-20 per hertz
+        Stage::Bank(Bank {
+            position: Position::Shunt,
+            element: BankElement::Coils,
+            proportional: true,
+            steps: 3,
+            contact: one.scaled(1),
+            stray: one.scaled(-20),
+        }),
+    ];
+    // of 2^-22 and 2^-30, of 2^-21 without a loss, and of more than 16 bits with one of 2^-29
+    let steps = [
+        (one.scaled(-22), one.scaled(-30)),
+        (one.scaled(-21), zero),
+        (scalar(0x4567_89ab, -50), one.scaled(-29)),
+    ]
+    .map(|(reactance, resistance)| BankStep {
+        reactance,
+        resistance,
+    });
+    TestChain::with_banks(&stages, &steps).expect("it has room")
 }
 
 #[rustfmt::skip]
-const IMAGE: [u8; 86] = [
+const IMAGE: [u8; 116] = [
     b'S', b'B', b'I', b'M', // magic
     1, // version
     16, // word length
-    86, 0, // length of the image
-    5, // stages
+    116, 0, // length of the image
+    6, // stages
     0x50, 0xc3, 0x00, 0x00, // 50 000 milliohms
     // branch in series
     0b0000_0001, 0b0000_0100,
@@ -107,8 +126,21 @@ const IMAGE: [u8; 86] = [
     0b0000_0100, 0b0000_0011,
     0x00, 0x40, 0x02,
     0x00, 0x40, 0xfe,
+    // bank in shunt, coils, with a resistance as the reactance
+    0b0011_1101, 0b0000_0011,
+    0x00, 0x40, 0x01, // 2^14, 1
+    0x00, 0x40, 0xec, // 2^14, −20
+    3, // steps
+    0b0011,
+    0x00, 0x40, 0xea, // 2^14, −22
+    0x00, 0x40, 0xe2, // 2^14, −30
+    0b0001,
+    0x00, 0x40, 0xeb, // 2^14, −21
+    0b0111,
+    0xab, 0x89, 0x67, 0x45, 0xec, 0xff, // −20
+    0x00, 0x40, 0xe3, // 2^14, −29
     // checksum by zlib's crc32
-    0xfd, 0x95, 0x8f, 0xfd,
+    0xc5, 0x8a, 0xf1, 0x11,
 ];
 
 #[test]

@@ -1,5 +1,6 @@
 //! Images: what goes in comes out, one image for each chain, and nothing else is accepted.
 
+mod bank_faults;
 mod chains;
 mod damage;
 mod faults;
@@ -11,15 +12,17 @@ use stagebits_kernel::{Chain, Scalar};
 
 /// Capacity of the chains in these tests.
 const CAPACITY: usize = 6;
+/// Room for the steps of their banks: three full ones.
+const STEPS: usize = 48;
 
-type TestChain = Chain<Scalar, CAPACITY>;
+type TestChain = Chain<Scalar, CAPACITY, STEPS>;
 
 fn decode(bytes: &[u8]) -> Result<(Header, TestChain), ImageError> {
     image::decode(bytes)
 }
 
 /// The image of a chain, in a buffer of just its length.
-fn encode<const N: usize>(chain: &Chain<Scalar, N>, header: Header) -> Vec<u8> {
+fn encode<const N: usize, const S: usize>(chain: &Chain<Scalar, N, S>, header: Header) -> Vec<u8> {
     let mut bytes = vec![0; image::encoded_len(chain, header).expect("constants are in range")];
     let written = image::encode(chain, header, &mut bytes);
     assert_eq!(written, Ok(bytes.len()));

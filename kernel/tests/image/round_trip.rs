@@ -2,6 +2,7 @@
 
 use proptest::collection::vec;
 use proptest::prelude::*;
+use stagebits_kernel::Stage;
 use stagebits_kernel::image::{self, Header, ImageError};
 
 use super::chains::{chains, headers};
@@ -17,6 +18,28 @@ fn accept_or_refuse(bytes: &[u8]) -> Result<(), TestCaseError> {
     if let Ok((header, chain)) = decode(bytes) {
         prop_assert_eq!(encode(&chain, header), bytes);
     }
+    Ok(())
+}
+
+/// Room for `S` steps is enough, or the first bank beyond it is named.
+fn needs_room<const S: usize>(
+    bytes: &[u8],
+    header: Header,
+    chain: &super::TestChain,
+) -> Result<(), TestCaseError> {
+    let result = image::decode::<{ super::CAPACITY }, S>(bytes);
+    let mut used = 0;
+    for (number, stage) in (1..).zip(chain.stages()) {
+        if let Stage::Bank(bank) = stage {
+            used += usize::from(bank.steps);
+        }
+        if used > S {
+            let capacity = S;
+            prop_assert_eq!(result, Err(ImageError::TooManySteps { number, capacity }));
+            return Ok(());
+        }
+    }
+    prop_assert_eq!(encode(&result.expect("it has room").1, header), bytes);
     Ok(())
 }
 
@@ -51,13 +74,21 @@ proptest! {
     #[test]
     fn a_chain_needs_room_for_its_stages((header, chain) in any_chain()) {
         let bytes = encode(&chain, header);
-        let result = image::decode::<3>(&bytes);
+        let result = image::decode::<3, { super::STEPS }>(&bytes);
         let stages = chain.stages().len();
         if stages <= 3 {
             prop_assert_eq!(encode(&result.expect("it has room").1, header), bytes);
         } else {
             prop_assert_eq!(result, Err(ImageError::TooManyStages { stages, capacity: 3 }));
         }
+    }
+
+    /// So is that of the steps of banks, down to none at all.
+    #[test]
+    fn a_chain_needs_room_for_the_steps_of_its_banks((header, chain) in any_chain()) {
+        let bytes = encode(&chain, header);
+        needs_room::<0>(&bytes, header, &chain)?;
+        needs_room::<11>(&bytes, header, &chain)?;
     }
 
     #[test]
@@ -79,7 +110,7 @@ proptest! {
         let count = stages.len() as u8;
         let bytes: Vec<u8> = stages
             .into_iter()
-            .flat_map(|(tag, mask, rest)| [tag % 5, mask & 0x87].into_iter().chain(rest))
+            .flat_map(|(tag, mask, rest)| [tag % 6, mask & 0x87].into_iter().chain(rest))
             .collect();
         accept_or_refuse(&image_of(word_bits, count, &bytes))?;
     }

@@ -58,6 +58,24 @@ const PASSIVE_LOADS: usize = 8;
 /// Random loads with both parts within ±2.
 const ANY_LOADS: usize = 3;
 
+/// Most banks that a chain may have for [`switches`] to reach all of them.
+pub const BANKS: usize = 12;
+
+/// The state of a chain's banks at a frequency: all steps off, all on or any.
+pub fn switches(hertz: u32) -> [u16; BANKS] {
+    match hertz % 8 {
+        0 => [0; BANKS],
+        1 => [u16::MAX; BANKS],
+        _ => {
+            let mut words = [0; BANKS];
+            for (word, random) in words.iter_mut().zip(Stream(!u64::from(hertz))) {
+                *word = random as u16;
+            }
+            words
+        }
+    }
+}
+
 const fn load(re: i32, im: i32) -> Gamma {
     Gamma { re, im }
 }

@@ -37,6 +37,6 @@ fn main() -> ! {
         point::<i32>(&chain, hertz, load);
         point::<i16>(&chain, hertz, load);
     }
-    info!("{}", image::decode::<7>(b"no image at all"));
+    info!("{}", image::decode::<7, 0>(b"no image at all"));
     exit::success()
 }

@@ -8,11 +8,13 @@ use stagebits_kernel::{
     Step, Word,
 };
 
-use crate::points::{Band, frequencies, loads};
+use crate::points::{Band, frequencies, loads, switches};
 pub use record::{Name, Record};
 
 /// Most stages that a chain may have.
 pub const CAPACITY: usize = 16;
+/// Most steps that its banks may have together.
+const STEPS: usize = 32;
 
 /// Forward power in milliwatts that voltages and currents are read for.
 const FORWARD_MILLIWATTS: u32 = 100_000;
@@ -53,7 +55,7 @@ pub fn evaluate(
 }
 
 fn all<W: Word>(
-    chain: &Chain<Scalar, CAPACITY>,
+    chain: &Chain<Scalar, CAPACITY, STEPS>,
     band: Band,
     reference_milliohms: u32,
     mut sink: impl FnMut(u32, Subject, &Record),
@@ -61,11 +63,13 @@ fn all<W: Word>(
     for hertz in frequencies(band) {
         let frequency = Frequency::new(hertz);
         sink(hertz, Subject::Frequency, &of_frequency(&frequency));
-        let resolved = chain.at::<W>(&frequency);
+        let switches = switches(hertz);
+        let resolved = chain.at_state::<W>(&frequency, &switches);
+        let alike = *chain.switched(&frequency).at_state(&switches) == resolved;
         for (number, step) in resolved.steps().iter().enumerate() {
             sink(hertz, Subject::Step(number), &of_step(step));
         }
-        sink(hertz, Subject::Chain, &of_chain(&resolved));
+        sink(hertz, Subject::Chain, &of_chain(&resolved, alike));
         for load in loads(hertz) {
             let record = of_point(&resolved, load, reference_milliohms);
             sink(hertz, Subject::Point(load), &record);
@@ -109,9 +113,10 @@ fn of_step<W: Word>(step: &Step<Immittance<W>>) -> Record {
     record
 }
 
-fn of_chain<W: Word>(resolved: &Resolved<Immittance<W>, CAPACITY>) -> Record {
+fn of_chain<W: Word>(resolved: &Resolved<Immittance<W>, CAPACITY>, alike: bool) -> Record {
     let mut record = Record::new();
     record.word("inverted", resolved.inverted().into());
+    record.word("switched alike", alike.into());
     let ChainMatrix { a, b, c, d } = resolved.chain_matrix();
     record.complex("a", a);
     record.complex("b", b);
