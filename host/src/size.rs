@@ -8,7 +8,7 @@ use std::ops::RangeInclusive;
 
 use num_complex::Complex;
 use rayon::prelude::*;
-use stagebits_kernel::{Chain, Gamma, Immittance, Resolved, Word};
+use stagebits_kernel::{Chain, Gamma, Word};
 
 use crate::arithmetic::{Arithmetic, Block, Single, to_complex, with_word};
 use crate::budget::share;
@@ -169,20 +169,18 @@ pub fn size(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort) -> Sizing
     let survey = SizeSurvey {
         reference: Reference::new(plan),
         walkers: formats.iter().map(|(_, walker)| &**walker).collect(),
-        longest: Block::new(exact),
     };
     let envelope = Envelope::new(plan);
     let tally = envelope.run(effort, &survey);
-    let count = tally.formats[0].spread.count();
-    let variance = tally.variances / count as f64;
+    let surveyed = tally[0].spread.count();
     let mut candidates: Vec<_> = formats
         .par_iter()
-        .zip(tally.formats)
+        .zip(tally)
         .map(|((format, walker), found)| {
             let error = |point: Point| {
                 let reference = survey.reference.at(f64::from(point.hertz));
                 let exact = reference.input_gamma(to_complex(point.load));
-                magnitude(walker.at(point.hertz)(point.load) - exact)
+                magnitude(walker.at(point.hertz).gamma(point.load) - exact)
             };
             let summit = found.worst.climb(&envelope, effort.seed, error);
             Candidate {
@@ -192,7 +190,7 @@ pub fn size(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort) -> Sizing
                 worst: summit.point,
                 ascent: summit.evaluations,
                 theory: match format {
-                    Format::Block(bits) => Some(theory::rms(variance, *bits)),
+                    Format::Block(_) => Some((found.variances / surveyed as f64).sqrt()),
                     Format::Single => None,
                 },
             }
@@ -212,7 +210,7 @@ pub fn size(plan: &Plan, exact: &Chain<f64, CAPACITY>, effort: Effort) -> Sizing
         });
     Sizing {
         effort,
-        surveyed: count,
+        surveyed,
         words: candidates,
         single,
         too_short,
@@ -230,78 +228,97 @@ fn block<W: Word>(exact: &Chain<f64, CAPACITY>) -> Box<dyn Walker> {
     Box::new(Block::<W>::new(exact))
 }
 
-/// An [`Arithmetic`] of any kind.
+/// A chain in a format of any kind.
 trait Walker: Sync {
-    /// Γ at the input for a load, at one frequency.
-    fn at(&self, hertz: u32) -> Box<dyn Fn(Gamma) -> Complex<f64>>;
+    fn at(&self, hertz: u32) -> Box<dyn WalkerPoint>;
 }
 
-impl<A: Arithmetic<Point: 'static>> Walker for A {
-    fn at(&self, hertz: u32) -> Box<dyn Fn(Gamma) -> Complex<f64>> {
-        let point = Arithmetic::at(self, hertz);
-        Box::new(move |load| A::gamma(&point, load))
+/// A [`Walker`] at one frequency.
+trait WalkerPoint {
+    /// Γ at the input for a load.
+    fn gamma(&self, load: Gamma) -> Complex<f64>;
+    /// Variance of its error by [`theory`], 0 where there is none.
+    fn variance(&self, load: Gamma) -> f64;
+}
+
+struct BlockPoint<W: Word>(<Block<W> as Arithmetic>::Point);
+
+impl<W: Word> Walker for Block<W> {
+    fn at(&self, hertz: u32) -> Box<dyn WalkerPoint> {
+        Box::new(BlockPoint::<W>(Arithmetic::at(self, hertz)))
+    }
+}
+
+impl<W: Word> WalkerPoint for BlockPoint<W> {
+    fn gamma(&self, load: Gamma) -> Complex<f64> {
+        Block::<W>::gamma(&self.0, load)
+    }
+
+    fn variance(&self, load: Gamma) -> f64 {
+        theory::variance(&self.0, load)
+    }
+}
+
+struct SinglePoint(<Single as Arithmetic>::Point);
+
+impl Walker for Single {
+    fn at(&self, hertz: u32) -> Box<dyn WalkerPoint> {
+        Box::new(SinglePoint(Arithmetic::at(self, hertz)))
+    }
+}
+
+impl WalkerPoint for SinglePoint {
+    fn gamma(&self, load: Gamma) -> Complex<f64> {
+        Single::gamma(&self.0, load)
+    }
+
+    fn variance(&self, _: Gamma) -> f64 {
+        0.0
     }
 }
 
 struct SizeSurvey<'a> {
     reference: Reference<'a>,
     walkers: Vec<&'a dyn Walker>,
-    /// What theory takes exponents from.
-    longest: Block<i32>,
 }
 
-struct SizePoint {
-    reference: FrequencyPoint,
-    walks: Vec<Box<dyn Fn(Gamma) -> Complex<f64>>>,
-    longest: Resolved<Immittance<i32>, CAPACITY>,
-}
-
-/// What is added up over the points.
-struct Tally {
-    formats: Vec<Found>,
-    variances: f64,
-}
-
-#[derive(Default)]
+/// What is added up over the points for one format.
+#[derive(Clone, Default)]
 struct Found {
     spread: Spread,
     worst: WorstPoints,
+    variances: f64,
 }
 
 impl Survey for SizeSurvey<'_> {
-    type Prepared = SizePoint;
-    type Kept = Tally;
+    type Prepared = (FrequencyPoint, Vec<Box<dyn WalkerPoint>>);
+    type Kept = Vec<Found>;
 
-    fn prepare(&self, hertz: u32) -> SizePoint {
-        SizePoint {
-            reference: self.reference.at(f64::from(hertz)),
-            walks: self.walkers.iter().map(|walker| walker.at(hertz)).collect(),
-            longest: Arithmetic::at(&self.longest, hertz),
-        }
+    fn prepare(&self, hertz: u32) -> Self::Prepared {
+        let reference = self.reference.at(f64::from(hertz));
+        let points = self.walkers.iter().map(|walker| walker.at(hertz));
+        (reference, points.collect())
     }
 
-    fn empty(&self) -> Tally {
-        Tally {
-            formats: self.walkers.iter().map(|_| Found::default()).collect(),
-            variances: 0.0,
-        }
+    fn empty(&self) -> Vec<Found> {
+        vec![Found::default(); self.walkers.len()]
     }
 
-    fn take(&self, prepared: &SizePoint, point: Point, kept: &mut Tally) {
-        let exact = prepared.reference.input_gamma(to_complex(point.load));
-        for (walk, found) in prepared.walks.iter().zip(&mut kept.formats) {
-            let error = walk(point.load) - exact;
+    fn take(&self, (reference, points): &Self::Prepared, point: Point, kept: &mut Vec<Found>) {
+        let exact = reference.input_gamma(to_complex(point.load));
+        for (walker, found) in points.iter().zip(kept) {
+            let error = walker.gamma(point.load) - exact;
             found.spread.take(error);
             found.worst.take(magnitude(error), point);
+            found.variances += walker.variance(point.load);
         }
-        kept.variances += theory::variance(&prepared.longest, point.load);
     }
 
-    fn merge(&self, kept: &mut Tally, later: Tally) {
-        for (found, later) in kept.formats.iter_mut().zip(later.formats) {
+    fn merge(&self, kept: &mut Vec<Found>, later: Vec<Found>) {
+        for (found, later) in kept.iter_mut().zip(later) {
             found.spread.merge(later.spread);
             found.worst.merge(later.worst);
+            found.variances += later.variances;
         }
-        kept.variances += later.variances;
     }
 }

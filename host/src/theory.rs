@@ -12,15 +12,15 @@
 //! ```
 //!
 //! The sum goes over the words of the load, of every state on the walk and of the immittances, a
-//! word that stands in two places of a stage counted once with both. Exponents come from a walk in
-//! words of 32 bits: those of W bits have the same but for 32 − W.
+//! word that stands in two places of a stage counted once with both. States and exponents are those
+//! of the walk in words itself, which says nothing about their errors but where blocks grow.
 //!
 //! Stored constants, which are a handful of fixed errors rather than noise, and the functions of a
 //! frequency, which are as good as 2⁻³¹ whatever W, are left out. Practice is thus above theory
-//! where two large reactances nearly cancel, and from 30 bits up.
+//! where two large reactances nearly cancel, and a little at 32 bits.
 
 use num_complex::Complex;
-use stagebits_kernel::{Gamma, Immittance, Resolved, State, Step, TwoPortWords, Walk};
+use stagebits_kernel::{Gamma, Immittance, Resolved, State, Step, TwoPortWords, Walk, Word};
 
 use crate::arithmetic::state_values;
 use crate::constants::CAPACITY;
@@ -28,8 +28,8 @@ use crate::constants::CAPACITY;
 /// Variance of an error spread evenly over 1.
 const EVEN: f64 = 1.0 / 12.0;
 
-/// Variance of ΔΓ at one point in words of 32 bits, without that of reading Γ.
-pub fn variance(point: &Resolved<Immittance<i32>, CAPACITY>, load: Gamma) -> f64 {
+/// Variance of ΔΓ at one point in words of type `W`.
+pub fn variance<W: Word>(point: &Resolved<Immittance<W>, CAPACITY>, load: Gamma) -> f64 {
     let state = State::from_load(load);
     let (v, i) = state_values(&state);
     let mut noise = Noise { state, sum: 0.0 };
@@ -39,25 +39,19 @@ pub fn variance(point: &Resolved<Immittance<i32>, CAPACITY>, load: Gamma) -> f64
         noise.pass(step);
     }
     let (v, i) = noise.values();
-    4.0 * noise.sum / (v + i).norm_sqr().powi(2)
-}
-
-/// Root mean square of ΔΓ in words of `word_bits` from the mean of [`variance`] over many points.
-pub fn rms(variance: f64, word_bits: u32) -> f64 {
-    let unit = f64::from(-(Gamma::FRACTION_BITS as i32)).exp2();
-    let readout = 2.0 * EVEN * unit * unit;
-    (variance * 4_f64.powi(32 - word_bits as i32) + readout).sqrt()
+    let readout = 2.0 * EVEN * 4_f64.powi(-(Gamma::FRACTION_BITS as i32));
+    4.0 * noise.sum / (v + i).norm_sqr().powi(2) + readout
 }
 
 /// A walk with the sum of the variances of δv·i − δi·v so far.
-struct Noise {
-    state: State<i32>,
+struct Noise<W> {
+    state: State<W>,
     sum: f64,
 }
 
 type Pair = (Complex<f64>, Complex<f64>);
 
-impl Noise {
+impl<W: Word> Noise<W> {
     fn values(&self) -> Pair {
         state_values(&self.state)
     }
@@ -72,7 +66,7 @@ impl Noise {
         self.sum += variance * lever.norm_sqr();
     }
 
-    fn pass(&mut self, step: &Step<Immittance<i32>>) {
+    fn pass(&mut self, step: &Step<Immittance<W>>) {
         match step {
             Step::Series(z) => {
                 let lever = self.series(z);
@@ -103,7 +97,7 @@ impl Noise {
     }
 
     /// Passes a series impedance; returns the lever of its own error.
-    fn series(&mut self, z: &Immittance<i32>) -> Complex<f64> {
+    fn series(&mut self, z: &Immittance<W>) -> Complex<f64> {
         let exponent = self.state.words().2;
         self.state.series(z);
         let grown = self.state.words().2 > exponent;
@@ -112,7 +106,7 @@ impl Noise {
         i * i
     }
 
-    fn shunt(&mut self, y: &Immittance<i32>) {
+    fn shunt(&mut self, y: &Immittance<W>) {
         let exponent = self.state.words().2;
         self.state.shunt(y);
         let grown = self.state.words().2 > exponent;
@@ -134,7 +128,7 @@ impl Noise {
     }
 
     /// The words of a chain matrix that has been passed, from the state `before` it.
-    fn two_port(&mut self, two_port: &TwoPortWords<i32>, (v, i): Pair) {
+    fn two_port(&mut self, two_port: &TwoPortWords<W>, (v, i): Pair) {
         let (after_v, after_i) = self.values();
         let [a, b, c, d] = two_port.words();
         let [of_a, of_b, of_c, of_d] = [v * after_i, i * after_i, -v * after_v, -i * after_v];
@@ -150,7 +144,7 @@ impl Noise {
     }
 }
 
-fn of_immittance(z: &Immittance<i32>) -> f64 {
+fn of_immittance<W: Word>(z: &Immittance<W>) -> f64 {
     of_words(z.words(), z.exponent())
 }
 

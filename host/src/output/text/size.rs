@@ -3,7 +3,7 @@
 use std::fmt::Write;
 
 use super::{NAME_WIDTH, WIDTH, place, shortened, times_wanted};
-use crate::output::figures::{error, grouped, significant};
+use crate::output::figures::{error, grouped};
 use crate::output::table::Table;
 use crate::plan::Plan;
 use crate::size::{Candidate, Format, Sizing, TooShort};
@@ -48,9 +48,9 @@ pub fn size(plan: &Plan, sizing: &Sizing) -> String {
     line(
         "points",
         format!(
-            "{}, the same for all, and about {} of ascent for each, seed {}",
+            "{} in every format and {} of ascent in all, seed {}",
             grouped(sizing.surveyed),
-            grouped(sizing.ascent() / sizing.formats().count() as u64),
+            grouped(sizing.ascent()),
             sizing.effort.seed,
         ),
     );
@@ -63,7 +63,7 @@ pub fn size(plan: &Plan, sizing: &Sizing) -> String {
         table.row([
             name(candidate.format),
             error(candidate.worst_error),
-            significant(wanted / candidate.worst_error),
+            margin(wanted / candidate.worst_error),
             (if candidate.meets(plan.accuracy) {
                 "yes"
             } else {
@@ -89,7 +89,6 @@ fn name(format: Format) -> String {
 /// How bad the longest words that are too short are, where, and what of.
 fn reasons(plan: &Plan, too_short: &TooShort) -> [String; 4] {
     let culprit = too_short.culprit();
-    let stage = &plan.stages[culprit.stage].name;
     let percent = |share: f64| format!("{:.0} %", 100.0 * share);
     [
         format!(
@@ -97,16 +96,25 @@ fn reasons(plan: &Plan, too_short: &TooShort) -> [String; 4] {
             too_short.word_bits,
             times_wanted(too_short.worst_error, plan.accuracy.gamma),
         ),
-        format!("at {}", place(plan, too_short.worst)),
+        format!("at {},", place(plan, too_short.worst)),
         format!(
-            "{} of that by the stage {}:",
+            "{} of it by the stage {},",
             percent(culprit.stage_share),
-            shortened(stage, NAME_WIDTH),
+            shortened(&plan.stages[culprit.stage].name, NAME_WIDTH),
         ),
         format!(
-            "{} {}",
+            "{} by its {}",
             percent(culprit.source_share),
             culprit.source.name()
         ),
     ]
+}
+
+/// Three significant digits without an exponent, fewer below 0.01.
+fn margin(margin: f64) -> String {
+    if margin >= 1000.0 {
+        return grouped(margin.min(1e18).round() as u64);
+    }
+    let places = (2.0 - margin.log10().floor()).clamp(0.0, 4.0) as usize;
+    format!("{margin:.places$}")
 }
