@@ -92,13 +92,13 @@ fn reasons(plan: &Plan, too_short: &TooShort) -> [String; 4] {
     let percent = |share: f64| format!("{:.0} %", 100.0 * share);
     [
         format!(
-            "{} bits, {}",
+            "{} bits, {} at",
             too_short.word_bits,
             times_wanted(too_short.worst_error, plan.accuracy.gamma),
         ),
-        format!("at {},", place(plan, too_short.worst)),
+        place(plan, too_short.worst),
         format!(
-            "{} of it by the stage {},",
+            "{} of that by the stage {},",
             percent(culprit.stage_share),
             shortened(&plan.stages[culprit.stage].name, NAME_WIDTH),
         ),
@@ -112,6 +112,9 @@ fn reasons(plan: &Plan, too_short: &TooShort) -> [String; 4] {
 
 /// Three significant digits without an exponent, fewer below 0.01.
 fn margin(margin: f64) -> String {
+    if margin.is_infinite() {
+        return "∞".to_owned();
+    }
     if margin >= 1000.0 {
         return grouped(margin.min(1e18).round() as u64);
     }
