@@ -19,6 +19,8 @@ mod permissions;
 mod repeatability;
 #[path = "command_line/response.rs"]
 mod response;
+#[path = "command_line/sizing.rs"]
+mod sizing;
 #[path = "command_line/switches.rs"]
 mod switches;
 #[path = "command_line/text.rs"]
@@ -35,7 +37,10 @@ use assert_cmd::Command;
 use assert_cmd::cargo::cargo_bin_cmd;
 use tempfile::TempDir;
 
-const COMMANDS: [&str; 2] = ["respond", "budget"];
+const COMMANDS: [&str; 3] = ["respond", "budget", "size"];
+
+/// Those that search the envelope.
+const SEARCHES: [&str; 2] = ["budget", "size"];
 
 const EXAMPLES: [&str; 4] = [
     "handheld-impedance-meter",
@@ -120,11 +125,11 @@ fn run_in<S: AsRef<OsStr>>(folder: &Path, arguments: impl IntoIterator<Item = S>
     command.output().expect("the program starts").into()
 }
 
-/// Runs a command on one of the examples; a budget over few points, to be quick.
+/// Runs a command on one of the examples; a search over few points, to be quick.
 fn run_example(command: &str, name: &str, arguments: &[&str]) -> Run {
     let mut run = stagebits();
     run.arg(command).arg(example(name)).args(arguments);
-    if command == "budget" {
+    if SEARCHES.contains(&command) {
         run.args(["--points", "2000"]);
     }
     run.output().expect("the program starts").into()

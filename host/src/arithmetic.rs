@@ -155,3 +155,19 @@ pub fn states<W: Word>(
         state
     }))
 }
+
+/// Calls a generic function with the word type of a length from 10 to 32 bits.
+macro_rules! with_word {
+    ($bits:expr, $function:ident($($argument:expr),*)) => {
+        with_word!(@ $bits, $function($($argument),*),
+            10 11 12 13 14 15 17 18 19 20 21 22 23 24 25 26 27 28 29 30 31)
+    };
+    (@ $bits:expr, $function:ident $arguments:tt, $($width:literal)*) => {
+        match $bits {
+            16 => $function::<i16> $arguments,
+            $($width => $function::<::stagebits_kernel::Bits<$width>> $arguments,)*
+            _ => $function::<i32> $arguments,
+        }
+    };
+}
+pub(crate) use with_word;

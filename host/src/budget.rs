@@ -7,49 +7,10 @@ use crate::comparison::{Comparison, ComparisonPoint, Split};
 use crate::constants::Constants;
 use crate::envelope::{Effort, Envelope, Point, Survey};
 use crate::plan::{Accuracy, Plan, Switches};
+use crate::spread::{Spread, WorstPoints, magnitude};
 
 /// Largest closure that the rounding of `f64` can account for.
 pub const CLOSURE_LIMIT: f64 = 1e-12;
-
-/// How many of the worst points the local ascent starts from.
-const ASCENTS: usize = 12;
-
-/// Largest and root mean square of the magnitudes of something over an envelope.
-#[derive(Clone, Copy, Debug, Default, PartialEq)]
-pub struct Spread {
-    /// Largest magnitude.
-    pub worst: f64,
-    squares: f64,
-    count: u64,
-}
-
-impl Spread {
-    fn take(&mut self, error: Complex<f64>) {
-        self.worst = self.worst.max(magnitude(error));
-        self.squares += error.norm_sqr();
-        self.count += 1;
-    }
-
-    fn merge(&mut self, later: Self) {
-        self.worst = self.worst.max(later.worst);
-        self.squares += later.squares;
-        self.count += later.count;
-    }
-
-    /// Root mean square; zero of nothing.
-    pub fn rms(&self) -> f64 {
-        (self.squares / self.count.max(1) as f64).sqrt()
-    }
-}
-
-/// |z|; infinite where it is not a number, so that a comparison that failed is the worst of all.
-fn magnitude(z: Complex<f64>) -> f64 {
-    if z.is_finite() {
-        z.norm()
-    } else {
-        f64::INFINITY
-    }
-}
 
 /// One line of a budget.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -114,21 +75,13 @@ pub fn budget<W: Word>(plan: &Plan, exact: &Constants<f64>, effort: Effort) -> B
             plan,
         },
     );
-    let mut evaluations = tally.total.count;
     let at = |point: &Point| comparison.at_state(point.hertz, &point.switches);
     let error = |point: Point| magnitude(at(&point).error(point.load));
-    let mut worst = tally.worst[0];
-    for (index, (_, start)) in tally.worst.iter().enumerate() {
-        let seed = effort.seed.wrapping_add(index as u64);
-        let (point, value, tried) = envelope.ascend(*start, seed, error);
-        evaluations += tried;
-        if value > worst.0 {
-            worst = (value, point);
-        }
-    }
-    let split = at(&worst.1).split(worst.1.load);
+    let summit = tally.worst.climb(&envelope, effort.seed, error);
+    let evaluations = tally.total.count() + summit.evaluations;
+    let split = at(&summit.point).split(summit.point.load);
     tally.closure = tally.closure.max(split.closure());
-    tally.finish(W::BITS, effort, evaluations, worst.1, split)
+    tally.finish(W::BITS, effort, evaluations, summit.point, split)
 }
 
 struct BudgetSurvey<'a, W> {
@@ -138,8 +91,7 @@ struct BudgetSurvey<'a, W> {
 
 /// What is added up over the points.
 struct Tally {
-    /// The worst point of each of the worst frequencies, worst first.
-    worst: Vec<(f64, Point)>,
+    worst: WorstPoints,
     total: Spread,
     load: Spread,
     stages: Vec<[Spread; 4]>,
@@ -160,7 +112,7 @@ impl<W: Word> Survey for BudgetSurvey<'_, W> {
     fn empty(&self) -> Tally {
         let stages = self.plan.stages.len();
         Tally {
-            worst: Vec::new(),
+            worst: WorstPoints::default(),
             total: Spread::default(),
             load: Spread::default(),
             stages: vec![Default::default(); stages],
@@ -188,13 +140,7 @@ impl<W: Word> Survey for BudgetSurvey<'_, W> {
         for (spread, sum) in kept.by_source.iter_mut().zip(by_source(&split)) {
             spread.take(sum);
         }
-        // within one frequency only the worst load is kept
-        let error = magnitude(split.total);
-        match kept.worst.first_mut() {
-            Some(worst) if worst.0 >= error => {}
-            Some(worst) => *worst = (error, point),
-            None => kept.worst.push((error, point)),
-        }
+        kept.worst.take(magnitude(split.total), point);
     }
 
     fn merge(&self, kept: &mut Tally, later: Tally) {
@@ -212,10 +158,7 @@ impl<W: Word> Survey for BudgetSurvey<'_, W> {
         for (spread, other) in pairs.chain(sums).chain(sources) {
             spread.merge(other);
         }
-        kept.worst.extend(later.worst);
-        // stable: among equals the earlier frequency stays first
-        kept.worst.sort_by(|a, b| b.0.total_cmp(&a.0));
-        kept.worst.truncate(ASCENTS);
+        kept.worst.merge(later.worst);
     }
 }
 
@@ -235,7 +178,7 @@ impl Tally {
         Budget {
             word_bits,
             effort,
-            surveyed: self.total.count,
+            surveyed: self.total.count(),
             evaluations,
             worst,
             total: line(split.total, self.total),

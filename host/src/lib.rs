@@ -13,4 +13,7 @@ pub mod plan;
 pub mod quantity;
 pub mod reference;
 pub mod respond;
+pub mod size;
+pub mod spread;
+pub mod theory;
 pub mod touchstone;

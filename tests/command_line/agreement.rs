@@ -12,7 +12,7 @@ fn magnitude(value: &Value) -> f64 {
 }
 
 /// Expects the figure `text`, of as many digits as it has, to be `value` rounded.
-fn shows(text: &str, value: f64) {
+pub(super) fn shows(text: &str, value: f64) {
     let text = text.replace('−', "-");
     let shown: f64 = text.parse().unwrap_or_else(|_| panic!("a number: {text}"));
     let (digits, power) = text.split_once('e').unwrap_or((&text, "0"));
@@ -86,7 +86,7 @@ fn response_says_the_same_as_the_text() {
 }
 
 /// Expects the name of a stage, whole or cut.
-fn named(text: &str, stage: &Value) {
+pub(super) fn named(text: &str, stage: &Value) {
     let stage = stage.as_str().expect("a name");
     assert!(
         text == stage
@@ -97,14 +97,14 @@ fn named(text: &str, stage: &Value) {
 }
 
 /// What stands behind a label at the head of a budget.
-fn labelled<'a>(text: &'a str, label: &str) -> &'a str {
+pub(super) fn labelled<'a>(text: &'a str, label: &str) -> &'a str {
     let line = text.lines().find_map(|line| line.strip_prefix(label));
     line.unwrap_or_else(|| panic!("{label} in\n{text}"))
         .trim_start()
 }
 
 /// The text between two others.
-fn between<'a>(text: &'a str, before: &str, after: &str) -> &'a str {
+pub(super) fn between<'a>(text: &'a str, before: &str, after: &str) -> &'a str {
     let (_, rest) = text
         .split_once(before)
         .unwrap_or_else(|| panic!("{before} in {text}"));
@@ -114,7 +114,7 @@ fn between<'a>(text: &'a str, before: &str, after: &str) -> &'a str {
 }
 
 /// Expects a complex number such as `0.7951 − 0.1930j`.
-fn shows_complex(text: &str, (re, im): (f64, f64)) {
+pub(super) fn shows_complex(text: &str, (re, im): (f64, f64)) {
     let text = text.strip_suffix('j').expect("an imaginary part");
     let (shown_re, shown_im) = text
         .split_once(" + ")

@@ -46,10 +46,13 @@ fn of_the_program_names_commands_and_exit_statuses() {
 
 #[test]
 fn of_each_command_names_every_option() {
-    let shared = ["<FILE>", "--word-bits <BITS>", "--json", "--output <PATH>"];
+    let shared = ["<FILE>", "--json", "--output <PATH>"];
+    let words = "--word-bits <BITS>";
+    let search = ["--points <POINTS>", "--seed <SEED>"];
     for (command, own) in [
-        ("respond", &["--load <R, X>"][..]),
-        ("budget", &["--points <POINTS>", "--seed <SEED>"]),
+        ("respond", &[words, "--load <R, X>"][..]),
+        ("budget", &[words, search[0], search[1]]),
+        ("size", &search),
     ] {
         let help = help(&[command, "--help"]);
         for option in shared.iter().chain(own) {
@@ -77,6 +80,7 @@ fn examples_work() {
         (&["respond", "--help"], 0),
         // sixteen bits are too few for the buoy
         (&["budget", "--help"], 1),
+        (&["size", "--help"], 0),
     ] {
         let help = help(arguments);
         let line = help

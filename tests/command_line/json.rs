@@ -12,7 +12,7 @@ pub(super) fn json(command: &str, name: &str, arguments: &[&str]) -> Value {
 }
 
 /// Expects exactly these keys, which stand in alphabetical order.
-fn keys(value: &Value, expected: &[&str]) {
+pub(super) fn keys(value: &Value, expected: &[&str]) {
     let object = value
         .as_object()
         .unwrap_or_else(|| panic!("an object: {value}"));

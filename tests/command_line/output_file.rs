@@ -24,7 +24,10 @@ fn new_file_holds_what_standard_output_would() {
         let written = fs::read_to_string(folder.path().join(command)).expect("a result");
         assert_eq!(written, expected(folder.path(), command));
     }
-    assert_eq!(names(folder.path()), ["budget", "chain.toml", "respond"]);
+    assert_eq!(
+        names(folder.path()),
+        ["budget", "chain.toml", "respond", "size"]
+    );
 }
 
 #[test]

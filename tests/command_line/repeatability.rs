@@ -1,6 +1,6 @@
 //! The same figures on every run and with any number of threads; others with another seed.
 
-use super::{COMMANDS, EXAMPLES, example, stagebits};
+use super::{COMMANDS, EXAMPLES, SEARCHES, example, stagebits};
 
 fn result(command: &str, name: &str, threads: &str, arguments: &[&str]) -> String {
     let mut run = stagebits();
@@ -16,7 +16,7 @@ fn result(command: &str, name: &str, threads: &str, arguments: &[&str]) -> Strin
 fn threads_do_not_matter() {
     for name in EXAMPLES {
         for command in COMMANDS {
-            let points: &[&str] = if command == "budget" {
+            let points: &[&str] = if SEARCHES.contains(&command) {
                 &["--points", "20000"]
             } else {
                 &[]

@@ -1,6 +1,6 @@
 //! Arguments that are wrong: status 2, nothing on standard output, and an error that names them.
 
-use super::{CHAIN, folder, names, run_in};
+use super::{CHAIN, SEARCHES, folder, names, run_in};
 
 fn refused(arguments: &[&str], named: &[&str]) {
     let folder = folder();
@@ -22,7 +22,11 @@ fn unknown_option() {
         refused(&[command, "chain.toml", "--jsn"], &["'--jsn'", "'--json'"]);
     }
     refused(&["respond", "chain.toml", "--points", "5"], &["'--points'"]);
-    refused(&["budget", "chain.toml", "--load", "1, 2"], &["'--load'"]);
+    for command in SEARCHES {
+        refused(&[command, "chain.toml", "--load", "1, 2"], &["'--load'"]);
+    }
+    let bits = ["size", "chain.toml", "--word-bits", "16"];
+    refused(&bits, &["'--word-bits'"]);
 }
 
 #[test]
@@ -33,7 +37,7 @@ fn unknown_command() {
 
 #[test]
 fn no_command() {
-    refused(&[], &["Usage:", "respond", "budget"]);
+    refused(&[], &["Usage:", "respond", "budget", "size"]);
 }
 
 #[test]
@@ -52,7 +56,7 @@ fn two_files() {
 
 #[test]
 fn word_length_out_of_range() {
-    for command in super::COMMANDS {
+    for command in ["respond", "budget"] {
         for bits in ["9", "33", "-16", "16.0", ""] {
             let option = format!("--word-bits={bits}");
             refused(&[command, "chain.toml", &option], &["--word-bits"]);
@@ -68,7 +72,9 @@ fn word_length_out_of_range() {
 fn points_out_of_range() {
     for points in ["0", "1000000000001", "-1", "1e6"] {
         let option = format!("--points={points}");
-        refused(&["budget", "chain.toml", &option], &["--points", points]);
+        for command in SEARCHES {
+            refused(&[command, "chain.toml", &option], &["--points", points]);
+        }
     }
 }
 
@@ -76,7 +82,9 @@ fn points_out_of_range() {
 fn seed_out_of_range() {
     for seed in ["18446744073709551616", "-1", "x"] {
         let option = format!("--seed={seed}");
-        refused(&["budget", "chain.toml", &option], &["--seed", seed]);
+        for command in SEARCHES {
+            refused(&[command, "chain.toml", &option], &["--seed", seed]);
+        }
     }
 }
 

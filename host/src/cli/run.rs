@@ -3,10 +3,10 @@
 use std::io;
 
 use num_complex::Complex;
-use stagebits_kernel::Bits;
 
-use super::arguments::{self, Arguments, Command, Common};
+use super::arguments::{self, Arguments, Command, Common, Search, Words};
 use super::switches::parse_switches;
+use crate::arithmetic::with_word;
 use crate::budget::{Budget, budget};
 use crate::chain_file;
 use crate::constants;
@@ -18,6 +18,7 @@ use crate::plan::{Loads, Plan, Switches};
 use crate::quantity::{self, Dimension};
 use crate::reference;
 use crate::respond::respond;
+use crate::size::size;
 
 /// How a run that produced its result ended.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -39,21 +40,6 @@ pub enum Failure {
     Write(String),
 }
 
-/// Calls a generic function with the word type of a length from 10 to 32 bits.
-macro_rules! with_word {
-    ($bits:expr, $function:ident($($argument:expr),*)) => {
-        with_word!(@ $bits, $function($($argument),*),
-            10 11 12 13 14 15 17 18 19 20 21 22 23 24 25 26 27 28 29 30 31)
-    };
-    (@ $bits:expr, $function:ident $arguments:tt, $($width:literal)*) => {
-        match $bits {
-            16 => $function::<i16> $arguments,
-            $($width => $function::<Bits<$width>> $arguments,)*
-            _ => $function::<i32> $arguments,
-        }
-    };
-}
-
 /// Does what the arguments ask for.
 ///
 /// # Errors
@@ -63,11 +49,12 @@ pub fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     match &arguments.command {
         Command::Respond(request) => run_respond(request),
         Command::Budget(request) => run_budget(request),
+        Command::Size(request) => run_size(request),
     }
 }
 
 fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
-    let plan = read(&request.common)?;
+    let plan = read_for(&request.common, &request.words)?;
     let given = request.load.as_deref().map(load).transpose()?;
     let one_load = given.or(match &plan.loads {
         Loads::Impedances(list) => Some(Complex::new(list[0].0, list[0].1)),
@@ -95,13 +82,10 @@ fn run_respond(request: &arguments::Respond) -> Result<Outcome, Failure> {
 }
 
 fn run_budget(request: &arguments::Budget) -> Result<Outcome, Failure> {
-    let plan = read(&request.common)?;
+    let plan = read_for(&request.common, &request.words)?;
     let destination = destination(&request.common)?;
     let exact = constants::exact(&plan);
-    let effort = Effort {
-        points: request.points,
-        seed: request.seed,
-    };
+    let effort = effort(&request.search);
     let result: Budget = with_word!(plan.firmware.word_bits, budget(&plan, &exact, effort));
     let rendering = if request.common.json {
         json::budget(&plan, &result)
@@ -109,16 +93,41 @@ fn run_budget(request: &arguments::Budget) -> Result<Outcome, Failure> {
         text::budget(&plan, &result)
     };
     write(&request.common, &destination, &rendering)?;
-    Ok(if result.meets(plan.accuracy) {
-        Outcome::Met
+    Ok(outcome(result.meets(plan.accuracy)))
+}
+
+fn run_size(request: &arguments::Size) -> Result<Outcome, Failure> {
+    let plan = read(&request.common)?;
+    let destination = destination(&request.common)?;
+    let sizing = size(&plan, &constants::exact(&plan), effort(&request.search));
+    let rendering = if request.common.json {
+        json::size(&plan, &sizing)
     } else {
-        Outcome::NotMet
-    })
+        text::size(&plan, &sizing)
+    };
+    write(&request.common, &destination, &rendering)?;
+    Ok(outcome(sizing.recommended().is_some()))
+}
+
+fn outcome(met: bool) -> Outcome {
+    if met { Outcome::Met } else { Outcome::NotMet }
+}
+
+fn effort(search: &Search) -> Effort {
+    Effort {
+        points: search.points,
+        seed: search.seed,
+    }
 }
 
 fn read(common: &Common) -> Result<Plan, Failure> {
-    let mut plan = chain_file::read(&common.file).map_err(Failure::Input)?;
-    if let Some(bits) = common.word_bits {
+    chain_file::read(&common.file).map_err(Failure::Input)
+}
+
+/// The plan in words of the length asked for.
+fn read_for(common: &Common, words: &Words) -> Result<Plan, Failure> {
+    let mut plan = read(common)?;
+    if let Some(bits) = words.word_bits {
         plan.firmware.word_bits = bits;
     }
     Ok(plan)

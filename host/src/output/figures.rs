@@ -7,6 +7,8 @@ use num_complex::Complex;
 pub fn error(value: f64) -> String {
     if value == 0.0 {
         "0".to_owned()
+    } else if !value.is_finite() {
+        "∞".to_owned()
     } else {
         format!("{value:.2e}")
     }

@@ -1,12 +1,17 @@
 //! Results as JSON. Complex numbers are `{"re": …, "im": …}`; SI units unless a name says other;
 //! null where a figure is infinite or not defined.
 
+mod size;
+
+pub use size::size;
+
 use num_complex::Complex;
 use serde_json::{Value, json};
 
 use crate::arithmetic::to_complex;
 use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
 use crate::comparison::StageSource;
+use crate::envelope::Point;
 use crate::plan::{Plan, Switches};
 use crate::reference::{Matrix, SParameters, impedance_from_gamma};
 use crate::respond::Response;
@@ -62,7 +67,6 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
             json!({ "name": stage.name, "sum": line(sum), "sources": by_source(sources, line) })
         })
         .collect();
-    let load = to_complex(budget.worst.load);
     rendered(&json!({
         "command": "budget",
         "version": env!("CARGO_PKG_VERSION"),
@@ -80,12 +84,7 @@ pub fn budget(plan: &Plan, budget: &Budget) -> String {
             "ascent_points": budget.evaluations - budget.surveyed,
             "seed": budget.effort.seed,
         },
-        "worst": {
-            "hertz": budget.worst.hertz,
-            "load_gamma": complex(load),
-            "load_ohm": complex(impedance_from_gamma(load, plan.reference)),
-            "switches": switches(plan, &budget.worst.switches),
-        },
+        "worst": place(plan, budget.worst),
         "closure": { "largest": budget.closure, "limit": CLOSURE_LIMIT },
         "total": line(&budget.total),
         "load": line(&budget.load),
@@ -103,6 +102,16 @@ fn switches(plan: &Plan, switches: &Switches) -> Vec<Value> {
             json!({ "stage": stage.name, "steps": bank.steps.len(), "word": word & bank.all_on() })
         })
         .collect()
+}
+
+fn place(plan: &Plan, point: Point) -> Value {
+    let load = to_complex(point.load);
+    json!({
+        "hertz": point.hertz,
+        "load_gamma": complex(load),
+        "load_ohm": complex(impedance_from_gamma(load, plan.reference)),
+        "switches": switches(plan, &point.switches),
+    })
 }
 
 fn by_source(

@@ -1,5 +1,9 @@
 //! Results as text of at most 80 columns.
 
+mod size;
+
+pub use size::size;
+
 use std::fmt::Write;
 
 use super::figures::{complex, engineering, error, fixed, frequency, grouped, ohms, significant};
@@ -7,6 +11,7 @@ use super::table::Table;
 use crate::arithmetic::to_complex;
 use crate::budget::{Budget, CLOSURE_LIMIT, Contribution, share};
 use crate::comparison::StageSource;
+use crate::envelope::Point;
 use crate::plan::{Plan, Switches};
 use crate::reference::impedance_from_gamma;
 use crate::respond::Response;
@@ -94,34 +99,26 @@ fn total(losses: &[f64]) -> f64 {
 pub fn budget(plan: &Plan, budget: &Budget) -> String {
     let wanted = plan.accuracy.gamma;
     let worst = budget.worst_error();
-    let verdict = if worst == 0.0 {
-        "met, no error found".to_owned()
-    } else if budget.meets(plan.accuracy) {
-        format!("met, {} times better than wanted", times(wanted / worst))
+    let met = if budget.meets(plan.accuracy) {
+        "met"
     } else {
-        format!("NOT met, {} times worse than wanted", times(worst / wanted))
+        "NOT met"
     };
-    let load = to_complex(budget.worst.load);
     let mut text = format!("{}\n", shortened(&plan.title, WIDTH));
     let mut line = |label: &str, value: String| {
         let _ = writeln!(text, "{label:<12}{value}");
     };
-    line("accuracy", verdict);
+    line(
+        "accuracy",
+        format!("{met}, {}", times_wanted(worst, wanted)),
+    );
     line(
         "worst |ΔΓ|",
         format!("{} found, {} wanted", error(worst), error(wanted)),
     );
     line("rms |ΔΓ|", error(budget.total.spread.rms()));
     line("words", format!("{} bits, block", budget.word_bits));
-    line(
-        "worst at",
-        format!(
-            "{}, load Γ {} ({})",
-            frequency(budget.worst.hertz),
-            complex(load, 4),
-            ohms(impedance_from_gamma(load, plan.reference)),
-        ),
-    );
+    line("worst at", place(plan, budget.worst));
     for (index, word) in switches(plan, &budget.worst.switches).enumerate() {
         line(if index == 0 { "switches" } else { "" }, word);
     }
@@ -195,6 +192,28 @@ fn switches(plan: &Plan, switches: &Switches) -> impl Iterator<Item = String> {
 fn percent(share: f64) -> String {
     // adding zero turns −0 into 0
     format!("{:.1} %", (share * 1000.0).round() / 10.0 + 0.0)
+}
+
+/// How much better or worse than wanted an error is.
+fn times_wanted(worst: f64, wanted: f64) -> String {
+    if worst == 0.0 {
+        "no error found".to_owned()
+    } else if worst <= wanted {
+        format!("{} times better than wanted", times(wanted / worst))
+    } else {
+        format!("{} times worse than wanted", times(worst / wanted))
+    }
+}
+
+/// A point of the envelope.
+fn place(plan: &Plan, point: Point) -> String {
+    let load = to_complex(point.load);
+    format!(
+        "{}, load Γ {} ({})",
+        frequency(point.hertz),
+        complex(load, 4),
+        ohms(impedance_from_gamma(load, plan.reference)),
+    )
 }
 
 /// A ratio of at least 1 in two to four digits.
