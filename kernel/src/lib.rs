@@ -46,6 +46,7 @@ mod logarithm;
 mod product;
 mod readout;
 mod real;
+mod root;
 mod scalar;
 mod stage;
 mod state;
